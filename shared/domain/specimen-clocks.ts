@@ -1,0 +1,173 @@
+/**
+ * From collection to receipt against the laboratory's profile, and when each result is due. No
+ * number here is universal (neutralising: 30 minutes to 6 hours by laboratory), so that all come
+ * from a signed profile.
+ */
+import {
+  addDays,
+  millisecondsPerMinute,
+  type Day,
+  type Instant,
+  type LocalTime,
+  type Weekday,
+} from './day';
+
+export const resultStages = [
+  'smear',
+  'amplification',
+  'culturePreliminary',
+  'cultureIdentification',
+  'susceptibility',
+  'cultureNegativeFinal',
+] as const;
+export type ResultStage = (typeof resultStages)[number];
+
+export interface LaboratoryProfile {
+  readonly version: number;
+  readonly name: string;
+  readonly effectiveOn: Day;
+  readonly isDemo: boolean;
+  readonly signedBy: string | null;
+  readonly signedOn: Day | null;
+  readonly receivingWeekdays: readonly Weekday[];
+  readonly cutOffTimes: Readonly<Partial<Record<Weekday, LocalTime>>>;
+  /** Null where the laboratory neutralises, or does not want it. */
+  readonly neutraliseWithinMinutes: number | null;
+  readonly receiptWithinMinutes: number;
+  readonly minimumVolumeMl: number;
+  readonly maximumVolumeMl: number;
+  /** Calendar days after receipt. */
+  readonly resultDays: Readonly<Record<ResultStage, number>>;
+}
+
+/** Invented for the demo clinic; each value lies in a published range. */
+export const demoLaboratoryProfile: LaboratoryProfile = {
+  version: 1,
+  name: 'Harbor Street laboratory (demo)',
+  effectiveOn: '2026-01-01',
+  isDemo: true,
+  signedBy: null,
+  signedOn: null,
+  // A Monday to Friday laboratory (NorDx 607), so that three mornings start Monday to Wednesday.
+  receivingWeekdays: [1, 2, 3, 4, 5],
+  cutOffTimes: { 1: '11:30', 2: '11:30', 3: '11:30', 4: '11:30', 5: '11:30' },
+  // Half an hour to 6 hours: the strictest, Curry International TB Center, step 4.
+  neutraliseWithinMinutes: 30,
+  // Within 4 hours: Washington University, Rady Children's Hospital.
+  receiptWithinMinutes: 240,
+  // 5 to 10 mL, at most 15 mL: ERS monograph 238; APHL/CDC training, slide 17.
+  minimumVolumeMl: 5,
+  maximumVolumeMl: 15,
+  resultDays: {
+    // Within 24 h of receipt (Clinical Microbiology Reviews, laboratory practice table).
+    smear: 1,
+    // Within 48 h of receipt (same table).
+    amplification: 2,
+    // Interim reports at 1, 3 and 6 weeks (National Jewish Health).
+    culturePreliminary: 21,
+    // Identified within 21 days of receipt (same table); allow the growth of children's specimens,
+    // 24.6 days on average, interquartile range to 37 (neutralisation trial in 116 children).
+    cultureIdentification: 37,
+    // 28 days of receipt for the first-line drugs, counted from the identification at the latest.
+    susceptibility: 65,
+    // Liquid culture: negative after 42 days (Indian national programme; 42 to 60 elsewhere).
+    cultureNegativeFinal: 42,
+  },
+};
+
+export interface SpecimenTimes {
+  readonly collectedAt: Instant;
+  readonly neutralisedAt: Instant | null;
+  readonly pickedUpAt: Instant | null;
+  readonly receivedAt: Instant | null;
+}
+
+export interface SpecimenClock {
+  readonly step: 'neutralise' | 'pick-up' | 'receipt';
+  readonly dueAt: Instant;
+  readonly doneAt: Instant | null;
+  /** From collection until done, or until now. */
+  readonly minutes: number;
+  readonly limitMinutes: number;
+  readonly state: 'running' | 'soon' | 'late' | 'in-time' | 'done-late';
+}
+
+export interface SpecimenClocksRequest extends SpecimenTimes {
+  readonly profile: LaboratoryProfile;
+  /** The laboratory's last receipt of the day; null where it has none. */
+  readonly cutOffAt: Instant | null;
+  readonly minutesToLaboratory?: number;
+  readonly now: Instant;
+}
+
+/** The last third of the time is "soon". */
+const soonShare = 2 / 3;
+
+export function specimenClocks(request: SpecimenClocksRequest): SpecimenClock[] {
+  const { profile, collectedAt, cutOffAt } = request;
+  const after = (minutes: number): Instant => collectedAt + minutes * millisecondsPerMinute;
+  const receiptDueAt = Math.min(after(profile.receiptWithinMinutes), cutOffAt ?? Infinity);
+  const pickUpDueAt = receiptDueAt - (request.minutesToLaboratory ?? 0) * millisecondsPerMinute;
+  const clocks = [
+    clock(request, 'pick-up', pickUpDueAt, request.pickedUpAt ?? request.receivedAt),
+    clock(request, 'receipt', receiptDueAt, request.receivedAt),
+  ];
+  if (profile.neutraliseWithinMinutes === null) return clocks;
+  const neutraliseDueAt = after(profile.neutraliseWithinMinutes);
+  return [clock(request, 'neutralise', neutraliseDueAt, request.neutralisedAt), ...clocks];
+}
+
+function clock(
+  { collectedAt, now }: SpecimenClocksRequest,
+  step: SpecimenClock['step'],
+  dueAt: Instant,
+  doneAt: Instant | null,
+): SpecimenClock {
+  const reachedAt = doneAt ?? now;
+  const soonAt = collectedAt + (dueAt - collectedAt) * soonShare;
+  const isLate = reachedAt > dueAt;
+  const state = doneAt
+    ? isLate
+      ? 'done-late'
+      : 'in-time'
+    : isLate
+      ? 'late'
+      : reachedAt >= soonAt
+        ? 'soon'
+        : 'running';
+  return {
+    step,
+    dueAt,
+    doneAt,
+    minutes: Math.floor((reachedAt - collectedAt) / millisecondsPerMinute),
+    limitMinutes: Math.floor((dueAt - collectedAt) / millisecondsPerMinute),
+    state,
+  };
+}
+
+/** The day by which a result is due, counted from the day of receipt at the laboratory. */
+export function dueOn(request: {
+  readonly profile: Pick<LaboratoryProfile, 'resultDays'>;
+  readonly receivedOn: Day;
+  readonly stage: ResultStage;
+}): Day {
+  return addDays(request.receivedOn, request.profile.resultDays[request.stage]);
+}
+
+export function dueDays(
+  profile: Pick<LaboratoryProfile, 'resultDays'>,
+  receivedOn: Day,
+): Record<ResultStage, Day> {
+  return Object.fromEntries(
+    resultStages.map((stage) => [stage, dueOn({ profile, receivedOn, stage })]),
+  ) as Record<ResultStage, Day>;
+}
+
+/** Overdue from the day after; on the day itself the laboratory may still report. */
+export function isOverdue(request: {
+  readonly dueOn: Day;
+  readonly today: Day;
+  readonly isReported: boolean;
+}): boolean {
+  return !request.isReported && request.today > request.dueOn;
+}
