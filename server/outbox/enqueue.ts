@@ -1,0 +1,80 @@
+import { QueryTypes, type Sequelize, type Transaction } from 'sequelize';
+
+/** A message to a person, as it waits in the outbox. Every message goes this way; none is sent from a request. */
+export interface OutgoingMessage {
+  /** Makes doubles impossible: the same key is queued once, for ever. */
+  readonly dedupeKey: string;
+  readonly kind: string;
+  readonly channel: 'sms' | 'mail';
+  readonly householdId: number | null;
+  readonly familyMemberId: number | null;
+  readonly staffId?: number | null;
+  /** E.164 number or e-mail address. */
+  readonly address: string;
+  readonly language: string;
+  /** Wording keys and the version of each that was rendered. */
+  readonly wordingVersions: Readonly<Record<string, number>>;
+  readonly subject?: string | null;
+  readonly body: string;
+  readonly calendar?: {
+    readonly method: 'REQUEST' | 'CANCEL' | 'PUBLISH';
+    readonly content: string;
+  } | null;
+  /** Reason of the call task when the message is given up; null when nobody needs to call. */
+  readonly callReason: string | null;
+  /** The morning the message is about, 'YYYY-MM-DD'. */
+  readonly morningOn?: string | null;
+  /** Epoch milliseconds, business clock. */
+  readonly dueAt: number;
+  /** After this instant the message is not sent any more; a text about last night never goes out this morning. */
+  readonly lastUsefulAt: number;
+  readonly createdAt: number;
+}
+
+/**
+ * Queues the message in the transaction of its cause.
+ * @returns true when it is new, false when a message with this key was queued before.
+ */
+export async function enqueue(
+  db: Sequelize,
+  transaction: Transaction,
+  message: OutgoingMessage,
+): Promise<boolean> {
+  const [, touched] = await db.query(
+    `INSERT IGNORE INTO messages (dedupe_key, kind, channel, household_id, family_member_id, staff_id, address, language,
+       wording_versions, subject, body, calendar, calendar_method, call_reason, morning_on, due_at, last_useful_at,
+       next_try_at, created_at)
+     VALUES (:dedupeKey, :kind, :channel, :householdId, :familyMemberId, :staffId, :address, :language, :wordingVersions,
+       :subject, :body, :calendar, :calendarMethod, :callReason, :morningOn, :dueAt, :lastUsefulAt, :dueAt, :createdAt)`,
+    {
+      replacements: {
+        ...message,
+        staffId: message.staffId ?? null,
+        subject: message.subject ?? null,
+        wordingVersions: JSON.stringify(message.wordingVersions),
+        calendar: message.calendar?.content ?? null,
+        calendarMethod: message.calendar?.method ?? null,
+        morningOn: message.morningOn ?? null,
+        dueAt: new Date(message.dueAt),
+        lastUsefulAt: new Date(message.lastUsefulAt),
+        createdAt: new Date(message.createdAt),
+      },
+      transaction,
+      type: QueryTypes.INSERT,
+    },
+  );
+  return touched === 1;
+}
+
+/** Takes a message back that has not been claimed yet. @returns how many were taken back (0 or 1). */
+export async function withdraw(
+  db: Sequelize,
+  transaction: Transaction,
+  dedupeKey: string,
+): Promise<number> {
+  const [result] = await db.query(
+    `UPDATE messages SET state = 'withdrawn' WHERE dedupe_key = :dedupeKey AND state = 'queued'`,
+    { replacements: { dedupeKey }, transaction },
+  );
+  return (result as { affectedRows?: number }).affectedRows ?? 0;
+}
