@@ -1,0 +1,150 @@
+import type { BeginCollectionRequest, MorningChanged } from '../../shared/contracts/this-morning';
+import { hungerCeiling } from '../../shared/domain/fasting-check';
+import type { Actor } from '../access-record/record';
+import type { StaffMember } from '../auth/current-user';
+import type { Context } from '../context';
+import { select } from '../database/connection';
+import { changedMeanwhile, notFound, Problem } from '../http/problem';
+import type { MorningPlan } from '../series/morning-plans';
+import { clinicClock } from '../specimens/specimen-says';
+import { doorIntakeAt } from './fast-so-far';
+import type { DoorCheckRow } from './morning-facts';
+import { changeMorning, updateMorning, type ChangeStep } from './morning-change';
+
+const minute = 60_000;
+
+interface RoomUse {
+  closure_minutes: number;
+  is_in_use: 0 | 1;
+  last_ended_at: Date | null;
+}
+
+/**
+ * The child goes into a room. The nurse's door check opens this; too short or too long a fast needs a clinician's
+ * reason on that check. A room whose air is not clean yet warns and never blocks.
+ */
+export function beginCollection(
+  context: Context,
+  actor: Actor,
+  staff: StaffMember,
+  morningId: number,
+  { version, roomId }: BeginCollectionRequest,
+): Promise<MorningChanged> {
+  return changeMorning(context, actor, staff, morningId, 'collection-begun', async (step) => {
+    const { plan, now, transaction } = step;
+    if (await isBegunAlready(context, step, staff, { version, roomId }))
+      return { isRepeated: true };
+    if (plan.state !== 'here')
+      throw plan.arrivedAt === null
+        ? new Problem(409, 'not-here-yet', 'This child has not arrived yet.')
+        : new Problem(409, 'morning-over', 'The collection of this morning has begun or is over.');
+    const check = await lastDoorCheck(context, step);
+    refuseUnlessOpen(plan, check, now);
+    const warnings = await roomWarnings(context, step, roomId);
+    await updateMorning(context.db, step, version, { state: 'collecting' });
+    await context.db.query(
+      `INSERT INTO collections (morning_id, room_id, begun_at, begun_by_staff_id)
+       VALUES (:morningId, :roomId, :now, :staffId)`,
+      { replacements: { morningId, roomId, now: new Date(now), staffId: staff.id }, transaction },
+    );
+    await context.db.query(
+      `UPDATE series SET state = 'collecting', version = version + 1 WHERE id = :seriesId AND state = 'planned'`,
+      { replacements: { seriesId: plan.seriesId }, transaction },
+    );
+    if (check?.verdict === 'cannot-tell')
+      warnings.push('The door check cannot tell how long the fast is.');
+    return { warnings, detail: { roomId } };
+  });
+}
+
+async function isBegunAlready(
+  context: Context,
+  { plan, transaction }: ChangeStep,
+  staff: StaffMember,
+  { version, roomId }: BeginCollectionRequest,
+): Promise<boolean> {
+  const [begun] = await select<{ room_id: number; begun_by_staff_id: number }>(
+    context.db,
+    'SELECT room_id, begun_by_staff_id FROM collections WHERE morning_id = :morningId AND ended_at IS NULL',
+    { morningId: plan.morningId },
+    transaction,
+  );
+  if (!begun) return false;
+  const isSame =
+    begun.room_id === roomId &&
+    begun.begun_by_staff_id === staff.id &&
+    plan.version === version + 1;
+  if (!isSame) throw changedMeanwhile();
+  return true;
+}
+
+async function lastDoorCheck(
+  context: Context,
+  { plan, transaction }: ChangeStep,
+): Promise<DoorCheckRow | null> {
+  const [check] = await select<DoorCheckRow>(
+    context.db,
+    'SELECT * FROM door_checks WHERE morning_id = :morningId ORDER BY id DESC LIMIT 1',
+    { morningId: plan.morningId },
+    transaction,
+  );
+  return check ?? null;
+}
+
+function refuseUnlessOpen(plan: MorningPlan, check: DoorCheckRow | null, now: number): void {
+  if (!check || (plan.fedAt !== null && check.checked_at.getTime() <= plan.fedAt))
+    throw new Problem(409, 'door-check-first', 'Check at the door first.');
+  if (check.go_on_reason !== null || plan.plan.kind === 'individual') return;
+  const lastIntakeAt = doorIntakeAt(check, plan.plan);
+  if (lastIntakeAt === null) return;
+  const readyAt = lastIntakeAt + plan.plan.leastMinutes * minute;
+  if (readyAt > now)
+    throw new Problem(
+      409,
+      'not-long-enough',
+      `Not fasted long enough until ${clinicClock(readyAt, plan.zone)}. A clinician decides to go on and gives the reason.`,
+      { readyAt: new Date(readyAt).toISOString() },
+    );
+  const { longestMinutes } = plan.plan;
+  if (hungerCeiling({ lastIntakeAt, longestMinutes, now }) === 'feed')
+    throw new Problem(
+      409,
+      'longest-fast-passed',
+      'The longest fast has passed: feed the child. A clinician decides to go on and gives the reason.',
+    );
+}
+
+/** @throws Problem 404 for a room of another site, 409 while another child is inside. */
+async function roomWarnings(
+  context: Context,
+  { plan, now, transaction }: ChangeStep,
+  roomId: number,
+): Promise<string[]> {
+  // Locks the room, so that two children do not begin in it at once.
+  const [room] = await select<{ id: number }>(
+    context.db,
+    'SELECT id FROM rooms WHERE id = :roomId AND site_id = :siteId FOR UPDATE',
+    { roomId, siteId: plan.siteId },
+    transaction,
+  );
+  if (!room) throw notFound('This room');
+  const [use] = await select<RoomUse>(
+    context.db,
+    `SELECT rooms.closure_minutes, COALESCE(MAX(collections.id IS NOT NULL AND collections.ended_at IS NULL), 0) AS is_in_use,
+       MAX(collections.ended_at) AS last_ended_at
+     FROM rooms
+       LEFT JOIN collections ON collections.room_id = rooms.id AND collections.begun_at > :yesterday
+     WHERE rooms.id = :roomId GROUP BY rooms.id`,
+    { roomId, yesterday: new Date(now - 24 * 60 * minute) },
+    transaction,
+  );
+  if (!use) throw notFound('This room');
+  if (Number(use.is_in_use) === 1)
+    throw new Problem(409, 'room-in-use', 'Another child is in this room.');
+  const opensAt =
+    use.last_ended_at === null ? 0 : use.last_ended_at.getTime() + use.closure_minutes * minute;
+  if (opensAt <= now) return [];
+  return [
+    `This room is closed until ${clinicClock(opensAt, plan.zone)}: its air is not clean yet.`,
+  ];
+}

@@ -1,0 +1,134 @@
+import type { Sequelize, Transaction } from 'sequelize';
+import { chooseLetter, type LetterChoice } from '../../shared/domain/letter-choice';
+import { dueOn, type LaboratoryProfile } from '../../shared/domain/specimen-clocks';
+import { dayOf } from '../../shared/domain/zone';
+import { select } from '../database/connection';
+import { seriesFactsOf, type SeriesFacts } from '../results/series-results';
+import type { LetterFacts } from './letter-parts';
+
+export interface Recipient {
+  readonly familyMemberId: number;
+  readonly fullName: string;
+  readonly language: string;
+}
+
+/** Everything a letter of one series is made from, except what the clinician chooses. */
+export interface LetterCase {
+  readonly series: SeriesFacts;
+  readonly choice: LetterChoice;
+  readonly childName: string;
+  readonly bornOn: string;
+  readonly siteName: string;
+  readonly recipients: readonly Recipient[];
+  readonly hasToldDanger: boolean;
+  readonly facts: Omit<LetterFacts, 'signer' | 'today'>;
+}
+
+interface CaseRow {
+  readonly full_name: string;
+  readonly call_me: string;
+  readonly born_on: string;
+  readonly site_name: string;
+  readonly zone: string;
+  readonly phone: string;
+  readonly emergency_number: string;
+  readonly profile: LaboratoryProfile;
+}
+
+/** The guardians who may read results; a helper never does. */
+function recipientsOf(
+  db: Sequelize,
+  childId: number,
+  transaction?: Transaction,
+): Promise<Recipient[]> {
+  return select<Recipient>(
+    db,
+    `SELECT family_members.id AS familyMemberId, family_members.full_name AS fullName,
+       family_members.reads_language AS language
+     FROM child_family_members JOIN family_members ON family_members.id = child_family_members.family_member_id
+     WHERE child_family_members.child_id = :childId AND child_family_members.standing = 'guardian'
+       AND child_family_members.sees_results = TRUE
+     ORDER BY family_members.id`,
+    { childId },
+    transaction,
+  );
+}
+
+/** Every call about something critical is done and ended in "told". */
+async function hasToldDanger(
+  db: Sequelize,
+  seriesId: number,
+  transaction?: Transaction,
+): Promise<boolean> {
+  const [row] = await select<{ calls: number; told: number | string | null }>(
+    db,
+    `SELECT COUNT(*) AS calls, SUM(done_at IS NOT NULL AND outcome = 'told') AS told
+     FROM call_tasks WHERE series_id = :seriesId AND reason IN ('positive-result', 'critical-result')`,
+    { seriesId },
+    transaction,
+  );
+  return row !== undefined && row.calls > 0 && Number(row.told) === row.calls;
+}
+
+function lastAnswerOn(series: SeriesFacts, row: CaseRow): string | null {
+  const open = series.mornings.filter(
+    (_morning, index) =>
+      series.results.specimens[index]?.state === 'awaiting' ||
+      series.results.specimens[index]?.state === 'planned',
+  );
+  if (open.length === 0 || open.some((morning) => morning.receivedAt === null)) return null;
+  const days = open.flatMap(({ receivedAt }) =>
+    receivedAt
+      ? dueOn({
+          profile: row.profile,
+          receivedOn: dayOf(receivedAt.getTime(), row.zone),
+          stage: 'cultureNegativeFinal',
+        })
+      : [],
+  );
+  return days.sort().at(-1) ?? null;
+}
+
+/** @returns null when the series does not exist at this site. */
+export async function letterCaseOf(
+  db: Sequelize,
+  siteId: number,
+  seriesId: number,
+  transaction?: Transaction,
+): Promise<LetterCase | null> {
+  const series = await seriesFactsOf(db, seriesId, transaction);
+  if (!series || series.siteId !== siteId) return null;
+  const [row] = await select<CaseRow>(
+    db,
+    `SELECT children.full_name, children.call_me, children.born_on, sites.name AS site_name, sites.zone, sites.phone,
+       sites.emergency_number, laboratory_profiles.body AS profile
+     FROM series JOIN children ON children.id = series.child_id JOIN sites ON sites.id = series.site_id
+       JOIN laboratory_profiles ON laboratory_profiles.id = series.laboratory_profile_id
+     WHERE series.id = :seriesId`,
+    { seriesId },
+    transaction,
+  );
+  if (!row) return null;
+  const choice = chooseLetter(series.results);
+  return {
+    series,
+    choice,
+    childName: row.full_name,
+    bornOn: row.born_on,
+    siteName: row.site_name,
+    recipients: await recipientsOf(db, series.childId, transaction),
+    hasToldDanger: await hasToldDanger(db, seriesId, transaction),
+    facts: {
+      choice,
+      callMe: row.call_me,
+      zone: row.zone,
+      mornings: series.mornings,
+      specimens: series.results.specimens,
+      planned: series.morningsPlanned,
+      lastAnswerOn: lastAnswerOn(series, row),
+      clinicName: row.site_name,
+      clinicPhone: row.phone,
+      emergencyNumber: row.emergency_number,
+    },
+  };
+}

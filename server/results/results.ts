@@ -1,0 +1,312 @@
+import { QueryTypes, type Transaction } from 'sequelize';
+import type { z } from 'zod';
+import type { enterResultRequest, ResultList, Specimen } from '../../shared/contracts/specimens';
+import { isCritical, isPositive } from '../../shared/domain/critical';
+import { dayOf } from '../../shared/domain/zone';
+import { record, type Actor } from '../access-record/record';
+import type { StaffMember } from '../auth/current-user';
+import { raiseCall } from '../calls/calls';
+import type { Context } from '../context';
+import { change, inTransaction, select } from '../database/connection';
+import { changedMeanwhile, invalid, notFound, Problem } from '../http/problem';
+import { announce } from '../live/announce';
+import {
+  laboratorySays,
+  specimenRows,
+  toSpecimen,
+  type SpecimenRow,
+} from '../specimens/specimen-rows';
+import {
+  currentResultRows,
+  findingsOf,
+  needsSecondLook,
+  resultsOfSpecimens,
+  type ResultRow,
+} from './current-results';
+
+export type EnteredResult = z.output<typeof enterResultRequest>;
+
+function seriesSays(specimens: readonly Specimen[]): string {
+  const results = specimens.flatMap((specimen) => specimen.results ?? []);
+  if (results.some((result) => result.isCritical))
+    return 'A person must be told before any letter.';
+  if (results.some((result) => result.needsSecondLook)) return 'A second look is needed.';
+  if (specimens.some((specimen) => specimen.isOverdue)) return 'A final answer is overdue.';
+  const open = specimens.filter(
+    (specimen) =>
+      !specimen.rejectedAt &&
+      !specimen.results?.some((one) => one.test === 'culture' && one.finality === 'final'),
+  ).length;
+  if (open === 0) return 'Every answer is final.';
+  return open === 1
+    ? 'One final answer is still expected.'
+    : `${open} final answers are still expected.`;
+}
+
+/** All open series with specimens at the laboratory, the most dangerous first. */
+export async function listResults(
+  context: Context,
+  actor: Actor,
+  staff: StaffMember,
+): Promise<ResultList> {
+  const now = context.clock.now();
+  const rows = await specimenRows(context.db, { siteId: staff.siteId, isOpenOnly: true });
+  const results = await resultsOfSpecimens(
+    context.db,
+    rows.map((row) => row.id),
+  );
+  const bySeries = new Map<number, SpecimenRow[]>();
+  for (const row of rows)
+    bySeries.set(row.series_id, [...(bySeries.get(row.series_id) ?? []), row]);
+  const series = [...bySeries.values()].flatMap((group) => {
+    const [first] = group;
+    if (!first) return [];
+    const specimens = group.map((row) => toSpecimen(row, results.get(row.id) ?? [], now));
+    return {
+      seriesId: first.series_id,
+      childId: first.child_id,
+      childName: first.full_name,
+      bornOn: first.born_on,
+      says: seriesSays(specimens),
+      isCritical: specimens.some((one) => one.results?.some((result) => result.isCritical)),
+      specimens,
+    };
+  });
+  const danger = (one: (typeof series)[number]): number =>
+    one.isCritical ? 0 : one.specimens.some((specimen) => specimen.isOverdue) ? 1 : 2;
+  series.sort((a, b) => danger(a) - danger(b) || a.seriesId - b.seriesId);
+  await record(context.db, undefined, actor, {
+    action: 'seen',
+    matter: 'results',
+    childIds: series.map((one) => one.childId),
+    at: now,
+  });
+  return { series, laboratorySays: await laboratorySays(context.db, staff.siteId) };
+}
+
+function checkEntry(
+  row: SpecimenRow,
+  entry: EnteredResult,
+  current: ResultRow | undefined,
+  now: number,
+) {
+  if (row.rejected_at)
+    throw new Problem(409, 'rejected', 'The laboratory has rejected this specimen.');
+  if (!row.received_at)
+    throw new Problem(
+      409,
+      'not-received',
+      'Record first when the laboratory received this specimen.',
+    );
+  if (entry.reportedOn < dayOf(row.collected_at.getTime(), row.zone))
+    throw invalid([{ path: 'reportedOn', message: 'This is before the specimen was collected.' }]);
+  if (entry.reportedOn > dayOf(now, row.zone))
+    throw invalid([{ path: 'reportedOn', message: 'This is in the future.' }]);
+  if (entry.test === 'culture') {
+    const isRunning = entry.value === 'no-growth-yet' || entry.value === 'growing';
+    if (isRunning && entry.finality === 'final')
+      throw invalid([{ path: 'finality', message: 'A culture that still runs is preliminary.' }]);
+    if (entry.value === 'negative-final' && entry.finality === 'preliminary')
+      throw invalid([
+        { path: 'finality', message: 'No growth before the final day is “no growth so far”.' },
+      ]);
+  }
+  if (current?.finality === 'final' && entry.correctionReason === null)
+    throw invalid([
+      {
+        path: 'correctionReason',
+        message: 'This test has a final result. Say why it is corrected; the earlier one is kept.',
+      },
+    ]);
+}
+
+const isSame = (current: ResultRow | undefined, entry: EnteredResult): boolean =>
+  current !== undefined &&
+  current.value === entry.value &&
+  current.finality === entry.finality &&
+  current.reported_on === entry.reportedOn;
+
+/** Everything critical is told by a person: a call task at once, and for a positive the reminder to report. */
+async function raiseDanger(
+  context: Context,
+  transaction: Transaction,
+  row: SpecimenRow,
+  entry: EnteredResult,
+): Promise<void> {
+  const findings = findingsOf([{ test: entry.test, value: entry.value } as ResultRow]);
+  if (!isCritical(findings)) return;
+  const now = context.clock.now();
+  const [child] = await select<{ household_id: number }>(
+    context.db,
+    'SELECT household_id FROM children WHERE id = :id',
+    { id: row.child_id },
+    transaction,
+  );
+  const subject = `${row.id}:${entry.test}:${entry.value}`;
+  const call = {
+    householdId: child?.household_id ?? null,
+    childId: row.child_id,
+    seriesId: row.series_id,
+    isForClinician: true,
+    urgentAt: now,
+    now,
+  };
+  const positive = isPositive(findings);
+  await raiseCall(context.db, transaction, {
+    ...call,
+    reason: positive ? 'positive-result' : 'critical-result',
+    openKey: `result:${subject}`,
+    detail: `Specimen ${row.number}: ${entry.test} ${entry.value}`,
+  });
+  if (positive)
+    await raiseCall(context.db, transaction, {
+      ...call,
+      reason: 'report-to-health-department',
+      openKey: `report:${row.series_id}`,
+      detail: 'Report to the health department under local law.',
+    });
+}
+
+/**
+ * Keeps a result from the laboratory's report; an earlier one of the same test stays as a version. A repeat of the same
+ * entry changes nothing.
+ * @throws Problem 404, 409 'rejected' | 'not-received' | 'changed-meanwhile', 422.
+ */
+export async function enterResult(
+  context: Context,
+  actor: Actor,
+  staff: StaffMember,
+  specimenId: number,
+  entry: EnteredResult,
+): Promise<Specimen> {
+  const now = context.clock.now();
+  return inTransaction(context.db, async (transaction) => {
+    const [row] = await specimenRows(
+      context.db,
+      { siteId: staff.siteId, id: specimenId },
+      transaction,
+    );
+    if (!row) throw notFound('This specimen');
+    await select(
+      context.db,
+      'SELECT id FROM specimens WHERE id = :specimenId FOR UPDATE',
+      { specimenId },
+      transaction,
+    );
+    const current = (await currentResultRows(context.db, [specimenId], transaction)).find(
+      (one) => one.test === entry.test,
+    );
+    if (!isSame(current, entry)) {
+      checkEntry(row, entry, current, now);
+      await writeResult(context, transaction, staff, row, entry, current);
+      await raiseDanger(context, transaction, row, entry);
+      await record(context.db, transaction, actor, {
+        action: 'changed',
+        matter: 'result',
+        childIds: [row.child_id],
+        detail: { specimenId, ...entry, replaces: current?.id ?? null },
+        at: now,
+      });
+      await announce(context.db, transaction, 'results', row.series_id);
+      await announce(context.db, transaction, 'calls');
+    }
+    const results = await resultsOfSpecimens(context.db, [specimenId], transaction);
+    return toSpecimen(row, results.get(specimenId) ?? [], now);
+  });
+}
+
+async function writeResult(
+  context: Context,
+  transaction: Transaction,
+  staff: StaffMember,
+  row: SpecimenRow,
+  entry: EnteredResult,
+  current: ResultRow | undefined,
+): Promise<void> {
+  if (current) {
+    const touched = await change(
+      context.db,
+      'UPDATE results SET is_current = FALSE, current_key = NULL WHERE id = :id AND is_current = TRUE',
+      { id: current.id },
+      transaction,
+    );
+    if (touched === 0) throw changedMeanwhile();
+  }
+  await context.db.query(
+    `INSERT INTO results (specimen_id, child_id, test, value, finality, reported_on, entered_at, entered_by_staff_id,
+       replaces_result_id, correction_reason, current_key)
+     VALUES (:specimenId, :childId, :test, :value, :finality, :reportedOn, :enteredAt, :staffId, :replaces,
+       :correctionReason, :currentKey)`,
+    {
+      type: QueryTypes.INSERT,
+      transaction,
+      replacements: {
+        specimenId: row.id,
+        childId: row.child_id,
+        test: entry.test,
+        value: entry.value,
+        finality: entry.finality,
+        reportedOn: entry.reportedOn,
+        enteredAt: new Date(context.clock.now()),
+        staffId: staff.id,
+        replaces: current?.id ?? null,
+        correctionReason: entry.correctionReason,
+        currentKey: `${row.id}:${entry.test}`,
+      },
+    },
+  );
+}
+
+/**
+ * The second look at a hand-entered final by another person.
+ * @throws Problem 404, 409 'same-person' when the reader entered it, 'changed-meanwhile' when it is no longer current.
+ */
+export async function lookAgain(
+  context: Context,
+  actor: Actor,
+  staff: StaffMember,
+  resultId: number,
+): Promise<Specimen> {
+  const now = context.clock.now();
+  return inTransaction(context.db, async (transaction) => {
+    const [found] = await select<{ specimen_id: number }>(
+      context.db,
+      'SELECT specimen_id FROM results WHERE id = :resultId',
+      { resultId },
+      transaction,
+    );
+    const [row] = found
+      ? await specimenRows(context.db, { siteId: staff.siteId, id: found.specimen_id }, transaction)
+      : [];
+    if (!row) throw notFound('This result');
+    const current = (await currentResultRows(context.db, [row.id], transaction)).find(
+      (one) => one.id === resultId,
+    );
+    if (!current) throw changedMeanwhile();
+    if (current.entered_by_staff_id === staff.id)
+      throw new Problem(
+        409,
+        'same-person',
+        'You entered this result. The second look is by another person.',
+      );
+    if (needsSecondLook(current)) {
+      await change(
+        context.db,
+        `UPDATE results SET second_look_by_staff_id = :staffId, second_look_at = :at
+         WHERE id = :resultId AND second_look_at IS NULL`,
+        { staffId: staff.id, at: new Date(now), resultId },
+        transaction,
+      );
+      await record(context.db, transaction, actor, {
+        action: 'changed',
+        matter: 'second-look',
+        childIds: [row.child_id],
+        detail: { resultId },
+        at: now,
+      });
+      await announce(context.db, transaction, 'results', row.series_id);
+    }
+    const results = await resultsOfSpecimens(context.db, [row.id], transaction);
+    return toSpecimen(row, results.get(row.id) ?? [], now);
+  });
+}

@@ -1,0 +1,63 @@
+import type { PlanSeriesRequest } from '../../shared/contracts/series';
+import { morningOn } from '../../shared/domain/series-dates';
+import { Problem, type FieldError } from '../http/problem';
+import { refusalSays } from './refusal-says';
+import { seriesChild, type Search } from './search';
+import type { PlannableOrder } from './series-orders';
+
+/**
+ * Looks at every chosen place again, as the clinic stands now and with the child's age on that very day.
+ * @throws Problem 409 'place-taken' or 'day-refused', with the path of each place and why
+ */
+export function refuseDays(
+  { request, protocol }: Search,
+  days: PlanSeriesRequest['days'],
+  orders: readonly PlannableOrder[],
+): void {
+  const callMe = new Map(orders.map((order) => [order.childId, order.callMe]));
+  const taken: FieldError[] = [];
+  const refused: FieldError[] = [];
+  days.forEach((day, dayIndex) => {
+    const seen = new Set<string>();
+    day.places.forEach((chosen, placeIndex) => {
+      const path = `days.${dayIndex}.places.${placeIndex}`;
+      const order = orders.find(({ childId }) => childId === chosen.childId);
+      const isSame = (place: { arrivalTime: string; roomId?: number }): boolean =>
+        place.arrivalTime === chosen.arrivalTime &&
+        (place.roomId ?? chosen.roomId) === chosen.roomId;
+      const place = request.places.find(isSame);
+      if (!order || !place) {
+        refused.push({ path, message: 'The clinic has no such place.' });
+        return;
+      }
+      const key = `${place.arrivalTime}:${place.roomId}`;
+      if (seen.has(key))
+        refused.push({ path, message: 'Two children cannot have the same place.' });
+      seen.add(key);
+      const child = seriesChild(order, day.on, protocol);
+      const alone = { ...request, places: [place], booked: [], children: [child] };
+      refused.push(
+        ...morningOn(alone, day.on).refused.map((refusal) => ({
+          path,
+          message: `${refusalSays(refusal, callMe)}.`,
+        })),
+      );
+      if (request.booked.some((booked) => booked.on === day.on && isSame(booked)))
+        taken.push({ path, message: 'This place is taken.' });
+    });
+  });
+  if (refused.length > 0)
+    throw new Problem(409, 'day-refused', 'These mornings cannot be planned as chosen.', {
+      detail: [...new Set(refused.map(({ message }) => message))].join(' '),
+      errors: refused,
+    });
+  if (taken.length > 0) throw placeTakenProblem(taken);
+}
+
+export const placeTakenProblem = (errors: readonly FieldError[] = []): Problem =>
+  new Problem(
+    409,
+    'place-taken',
+    'Somebody took one of these places a moment ago. Nothing was planned; choose among the places that are left.',
+    { errors },
+  );

@@ -1,0 +1,34 @@
+import type { Sequelize, Transaction } from 'sequelize';
+import type { PlanSeriesAnswer } from '../../shared/contracts/series';
+import { withoutLinks } from '../children/without-links';
+import { select } from '../database/connection';
+
+/** What waits in the outbox for a household, in order of time. */
+export async function familyWillHear(
+  db: Sequelize,
+  transaction: Transaction,
+  householdId: number,
+  now: number,
+): Promise<PlanSeriesAnswer['familyWillHear']> {
+  const rows = await select<{
+    dueAt: Date;
+    channel: 'sms' | 'mail';
+    name: string | null;
+    subject: string | null;
+    body: string;
+  }>(
+    db,
+    `SELECT messages.due_at AS dueAt, messages.channel, member.full_name AS name, messages.subject, messages.body
+     FROM messages LEFT JOIN family_members member ON member.id = messages.family_member_id
+     WHERE messages.household_id = :householdId AND messages.state = 'queued' AND messages.last_useful_at > :now
+     ORDER BY messages.due_at, messages.id`,
+    { householdId, now: new Date(now) },
+    transaction,
+  );
+  return rows.map((row) => ({
+    at: row.dueAt.toISOString(),
+    says: `${row.channel === 'sms' ? 'Text' : 'E-mail'} to ${row.name ?? 'the family'}: ${
+      row.subject ?? withoutLinks(row.body)
+    }`,
+  }));
+}

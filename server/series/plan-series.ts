@@ -1,0 +1,231 @@
+import { randomUUID } from 'node:crypto';
+import { UniqueConstraintError, type Transaction } from 'sequelize';
+import type { PlanSeriesAnswer, PlanSeriesRequest } from '../../shared/contracts/series';
+import { addDays, compareDays, type Day } from '../../shared/domain/day';
+import { instantOf } from '../../shared/domain/zone';
+import { record, type Actor } from '../access-record/record';
+import type { StaffMember } from '../auth/current-user';
+import type { Context } from '../context';
+import { inTransaction, select } from '../database/connection';
+import { invalid, type FieldError, type Problem } from '../http/problem';
+import { announce } from '../live/announce';
+import { sendCalendarEntries } from '../messages/calendar-entries';
+import { planHouseholdMessages } from '../messages/plan-messages';
+import type { Site } from '../sites/sites';
+import { placeTakenProblem, refuseDays } from './check-days';
+import { familyWillHear } from './family-will-hear';
+import { searchFor } from './search';
+import { Morning, Series } from './series-model';
+import { plannableOrders, type PlannableOrder } from './series-orders';
+
+/**
+ * Plans the mornings of one child, or of brothers and sisters together: all of them or none. Messages and calendar
+ * entries are queued in the same transaction.
+ * @throws Problem 409 'already-planned', 'not-ready', 'place-taken', 'day-refused'; 422 with fields
+ */
+export async function planSeries(
+  context: Context,
+  actor: Actor,
+  staff: StaffMember,
+  request: PlanSeriesRequest,
+): Promise<PlanSeriesAnswer> {
+  const { db, clock } = context;
+  const now = clock.now();
+  const days = [...request.days].sort((left, right) => compareDays(left.on, right.on));
+  try {
+    return await inTransaction(db, async (transaction) => {
+      const orders = await plannableOrders(db, staff, request.orderIds, transaction);
+      const [first] = orders;
+      const [firstDay] = days;
+      if (!first || !firstDay)
+        throw invalid([{ path: 'days', message: 'Choose at least one morning.' }]);
+      refuseWrongDays(request, days, orders);
+      await refuseWrongEscorts(context, request, orders, transaction);
+      const search = await searchFor(
+        db,
+        { siteId: first.siteId, orders, from: firstDay.on, count: days.length, now },
+        transaction,
+      );
+      refuseDays(search, request.days, orders);
+
+      const series: PlanSeriesAnswer['series'] = [];
+      const morningIds: number[] = [];
+      for (const order of orders) {
+        const made = await createSeries(context, transaction, {
+          order,
+          site: search.site,
+          fastingProtocolId: search.protocol.id,
+          laboratoryProfileId: search.profile.id,
+          staffId: staff.id,
+          mornings: days.flatMap((day) =>
+            day.places
+              .filter((place) => place.childId === order.childId)
+              .map((place) => ({
+                on: day.on,
+                arrivalTime: place.arrivalTime,
+                roomId: place.roomId,
+                escortFamilyMemberId:
+                  request.escorts.find((escort) => escort.on === day.on)?.familyMemberId ?? null,
+              })),
+          ),
+        });
+        series.push({ id: made.seriesId, childId: order.childId });
+        morningIds.push(...made.morningIds);
+      }
+      for (const { on } of days)
+        await planHouseholdMessages(context, transaction, { householdId: first.householdId, on });
+      await sendCalendarEntries(context, transaction, morningIds, 'REQUEST');
+      await record(db, transaction, actor, {
+        action: 'changed',
+        matter: 'series-planned',
+        childIds: orders.map((order) => order.childId),
+        detail: { series: series.map(({ id }) => id), days: days.map(({ on }) => on) },
+        at: now,
+      });
+      await announce(db, transaction, 'mornings');
+      for (const order of orders) await announce(db, transaction, 'children', order.childId);
+      return {
+        series,
+        familyWillHear: await familyWillHear(db, transaction, first.householdId, now),
+      };
+    });
+  } catch (error) {
+    throw placeTaken(error) ?? error;
+  }
+}
+
+export interface NewSeries {
+  readonly order: Pick<PlannableOrder, 'orderId' | 'childId'>;
+  readonly site: Pick<Site, 'id' | 'zone'>;
+  readonly fastingProtocolId: number;
+  readonly laboratoryProfileId: number;
+  readonly staffId: number;
+  /** In order of days; the first is number 1. */
+  readonly mornings: readonly {
+    readonly on: Day;
+    readonly arrivalTime: string;
+    readonly roomId: number;
+    readonly escortFamilyMemberId: number | null;
+  }[];
+}
+
+/** Writes the rows of a series that was found to fit. */
+export async function createSeries(
+  { clock, settings }: Context,
+  transaction: Transaction,
+  { order, site, mornings, ...ids }: NewSeries,
+): Promise<{ readonly seriesId: number; readonly morningIds: number[] }> {
+  const series = await Series.create(
+    {
+      childId: order.childId,
+      orderId: order.orderId,
+      siteId: site.id,
+      fastingProtocolId: ids.fastingProtocolId,
+      laboratoryProfileId: ids.laboratoryProfileId,
+      morningsPlanned: mornings.length,
+      createdByStaffId: ids.staffId,
+      createdAt: new Date(clock.now()),
+    },
+    { transaction },
+  );
+  const host = new URL(settings.origin).hostname;
+  const morningIds: number[] = [];
+  for (const [index, morning] of mornings.entries()) {
+    const { on, arrivalTime, roomId, escortFamilyMemberId } = morning;
+    const { id } = await Morning.create(
+      {
+        seriesId: series.id,
+        childId: order.childId,
+        siteId: site.id,
+        number: index + 1,
+        plannedOn: on,
+        arrivalTime,
+        arrivalAt: new Date(instantOf({ on, time: arrivalTime, zone: site.zone })),
+        roomId,
+        placeKey: placeKeyOf(site.id, on, arrivalTime, roomId),
+        escortFamilyMemberId,
+        calendarUid: `${randomUUID()}@${host}`,
+      },
+      { transaction },
+    );
+    morningIds.push(id);
+  }
+  return { seriesId: series.id, morningIds };
+}
+
+/** One child a place: the database takes this key once. */
+export const placeKeyOf = (siteId: number, on: Day, arrivalTime: string, roomId: number): string =>
+  `${siteId}:${on}:${arrivalTime}:${roomId}`;
+
+function refuseWrongDays(
+  { days: asked }: PlanSeriesRequest,
+  days: PlanSeriesRequest['days'],
+  orders: readonly PlannableOrder[],
+): void {
+  const errors: FieldError[] = [];
+  days.forEach((day, index) => {
+    const before = days[index - 1];
+    if (before && addDays(before.on, 1) !== day.on)
+      errors.push({
+        path: `days.${asked.indexOf(day)}.on`,
+        message: 'The mornings of a series follow each other day by day.',
+      });
+    const childIds = day.places.map(({ childId }) => childId);
+    const isEachOnce =
+      childIds.length === orders.length &&
+      orders.every(({ childId }) => childIds.includes(childId));
+    if (!isEachOnce)
+      errors.push({
+        path: `days.${asked.indexOf(day)}.places`,
+        message: 'Each child needs exactly one place on each morning.',
+      });
+  });
+  const other = orders.find(({ morningsPlanned }) => morningsPlanned !== days.length);
+  if (other)
+    errors.push({
+      path: 'days',
+      message: `The order for ${other.fullName} asks for ${other.morningsPlanned} mornings.`,
+    });
+  if (errors.length > 0) throw invalid(errors);
+}
+
+async function refuseWrongEscorts(
+  { db }: Context,
+  { escorts, days }: PlanSeriesRequest,
+  orders: readonly PlannableOrder[],
+  transaction: Transaction,
+): Promise<void> {
+  const adults = await select<{ id: number; children: number }>(
+    db,
+    `SELECT family_member_id AS id, COUNT(*) AS children FROM child_family_members
+     WHERE child_id IN (:childIds) GROUP BY family_member_id`,
+    { childIds: orders.map(({ childId }) => childId) },
+    transaction,
+  );
+  const errors = escorts.flatMap((escort, index): FieldError[] => {
+    const isAdult = adults.some(
+      (adult) => adult.id === escort.familyMemberId && adult.children === orders.length,
+    );
+    return [
+      ...(isAdult
+        ? []
+        : [
+            {
+              path: `escorts.${index}.familyMemberId`,
+              message: 'Choose an adult who belongs to every child of this morning.',
+            },
+          ]),
+      ...(days.some(({ on }) => on === escort.on)
+        ? []
+        : [{ path: `escorts.${index}.on`, message: 'No morning is planned on this day.' }]),
+    ];
+  });
+  if (errors.length > 0) throw invalid(errors);
+}
+
+/** Two people planned the same at the same moment: the database let one of them in. */
+function placeTaken(error: unknown): Problem | null {
+  if (!(error instanceof UniqueConstraintError)) return null;
+  if ('mornings_place' in error.fields) return placeTakenProblem();
+  return null;
+}

@@ -1,0 +1,162 @@
+import type { Sequelize, Transaction } from 'sequelize';
+import { select } from '../database/connection';
+import { notFound } from '../http/problem';
+import type { Day, LocalTime, Weekday } from '../../shared/domain/day';
+import type { Closure } from '../../shared/domain/series-dates';
+
+/** A door of the organisation: its clock, hours, telephone and message times. */
+export interface Site {
+  readonly id: number;
+  readonly name: string;
+  /** What messages call it; names neither disease nor test. */
+  readonly shortName: string;
+  readonly zone: string;
+  /** ISO 3166-1 alpha-2; numbers without a country code are read as numbers of this country. */
+  readonly country: string;
+  readonly region: string | null;
+  readonly address: string;
+  readonly door: string;
+  readonly doorDirections: string;
+  readonly phone: string;
+  readonly emergencyNumber: string;
+  /** Between these times somebody answers before the clinic opens. */
+  readonly dawnPhone: { readonly from: LocalTime; readonly until: LocalTime };
+  readonly clinicWeekdays: readonly Weekday[];
+  /** First and last arrival, inclusive. */
+  readonly arrivals: { readonly from: LocalTime; readonly until: LocalTime };
+  readonly minutesPerChild: number;
+  readonly placesPerMorning: number;
+  readonly staffPairs: number;
+  /** Days from today to the first morning at the least. */
+  readonly leadDays: number;
+  /** From arrival to collection. */
+  readonly usualWaitMinutes: number;
+  readonly eveningTextTime: LocalTime;
+  readonly morningQuestionMinutesBefore: number;
+  readonly callListMinutesBefore: number;
+}
+
+export interface SiteRoom {
+  readonly id: number;
+  readonly name: string;
+  readonly closureMinutes: number;
+}
+
+interface SiteRow {
+  id: number;
+  name: string;
+  short_name: string;
+  zone: string;
+  country: string;
+  region: string | null;
+  address: string;
+  door: string;
+  door_directions: string;
+  phone: string;
+  emergency_number: string;
+  dawn_answers_from_time: string;
+  dawn_answers_until_time: string;
+  clinic_weekdays: Weekday[];
+  arrivals_from_time: string;
+  arrivals_until_time: string;
+  minutes_per_child: number;
+  places_per_morning: number;
+  staff_pairs: number;
+  lead_days: number;
+  usual_wait_minutes: number;
+  evening_text_time: string;
+  morning_question_minutes_before: number;
+  call_list_minutes_before: number;
+}
+
+/** 'HH:mm' of a TIME column, which comes as 'HH:mm:ss'. */
+export const localTimeOfColumn = (time: string): LocalTime => time.slice(0, 5);
+
+/** @throws Problem 404 when there is no such site. */
+export async function siteOf(
+  db: Sequelize,
+  siteId: number,
+  transaction?: Transaction,
+): Promise<Site> {
+  const [site] = await sitesOf(db, [siteId], transaction);
+  if (!site) throw notFound('This site');
+  return site;
+}
+
+/** The sites with these ids, or all of them, in the order in which they were set up. */
+export async function sitesOf(
+  db: Sequelize,
+  siteIds?: readonly number[],
+  transaction?: Transaction,
+): Promise<Site[]> {
+  if (siteIds?.length === 0) return [];
+  const rows = await select<SiteRow>(
+    db,
+    `SELECT * FROM sites ${siteIds ? 'WHERE id IN (:siteIds)' : ''} ORDER BY id`,
+    { siteIds },
+    transaction,
+  );
+  return rows.map(siteFrom);
+}
+
+export async function roomsOf(
+  db: Sequelize,
+  siteId: number,
+  transaction?: Transaction,
+): Promise<SiteRoom[]> {
+  return select<SiteRoom>(
+    db,
+    'SELECT id, name, closure_minutes AS closureMinutes FROM rooms WHERE site_id = :siteId ORDER BY id',
+    { siteId },
+    transaction,
+  );
+}
+
+/** Closed days from a day on, holidays included. */
+export async function closuresOf(
+  db: Sequelize,
+  siteId: number,
+  from: Day,
+  transaction?: Transaction,
+): Promise<Closure[]> {
+  return select<Closure>(
+    db,
+    `SELECT closed_on AS \`on\`, reason FROM closures
+     WHERE site_id = :siteId AND closed_on >= :from ORDER BY closed_on`,
+    { siteId, from },
+    transaction,
+  );
+}
+
+function siteFrom(row: SiteRow): Site {
+  return {
+    id: row.id,
+    name: row.name,
+    shortName: row.short_name,
+    zone: row.zone,
+    country: row.country,
+    region: row.region,
+    address: row.address,
+    door: row.door,
+    doorDirections: row.door_directions,
+    phone: row.phone,
+    emergencyNumber: row.emergency_number,
+    dawnPhone: {
+      from: localTimeOfColumn(row.dawn_answers_from_time),
+      until: localTimeOfColumn(row.dawn_answers_until_time),
+    },
+    clinicWeekdays: row.clinic_weekdays,
+    arrivals: {
+      from: localTimeOfColumn(row.arrivals_from_time),
+      until: localTimeOfColumn(row.arrivals_until_time),
+    },
+    minutesPerChild: row.minutes_per_child,
+    placesPerMorning: row.places_per_morning,
+    staffPairs: row.staff_pairs,
+    leadDays: row.lead_days,
+    usualWaitMinutes: row.usual_wait_minutes,
+    eveningTextTime: localTimeOfColumn(row.evening_text_time),
+    morningQuestionMinutesBefore: row.morning_question_minutes_before,
+    callListMinutesBefore: row.call_list_minutes_before,
+  };
+}

@@ -1,0 +1,173 @@
+import type { Sequelize, Transaction } from 'sequelize';
+import type { Result, Specimen } from '../../shared/contracts/specimens';
+import { dueOn, isOverdue, specimenClocks } from '../../shared/domain/specimen-clocks';
+import type { LaboratoryProfile } from '../../shared/domain/specimen-clocks';
+import { laboratoryCutOffAt } from '../../shared/domain/laboratory-day';
+import { dayOf } from '../../shared/domain/zone';
+import { select } from '../database/connection';
+import { specimenSays } from './specimen-says';
+
+export interface SpecimenRow {
+  readonly id: number;
+  readonly version: number;
+  readonly series_id: number;
+  readonly morning_id: number;
+  readonly child_id: number;
+  readonly full_name: string;
+  readonly born_on: string;
+  readonly number: number;
+  readonly mornings_planned: number;
+  readonly label: string | null;
+  readonly volume_ml: string;
+  readonly collected_at: Date;
+  readonly neutralised_at: Date | null;
+  readonly neutralised_with: string | null;
+  readonly handed_over_at: Date | null;
+  readonly received_at: Date | null;
+  readonly laboratory_number: string | null;
+  readonly rejected_at: Date | null;
+  readonly reject_reason: string | null;
+  readonly zone: string;
+  readonly site_id: number;
+  readonly profile: LaboratoryProfile;
+}
+
+export interface SpecimenWhere {
+  readonly siteId: number;
+  readonly id?: number;
+  readonly seriesIds?: readonly number[];
+  /** Leaves out series that are closed. */
+  readonly isOpenOnly?: boolean;
+}
+
+/** Specimens of a site with what their clocks need, oldest first. */
+export function specimenRows(
+  db: Sequelize,
+  where: SpecimenWhere,
+  transaction?: Transaction,
+): Promise<SpecimenRow[]> {
+  const conditions = ['series.site_id = :siteId'];
+  if (where.id !== undefined) conditions.push('specimens.id = :id');
+  if (where.seriesIds !== undefined) conditions.push('specimens.series_id IN (:seriesIds)');
+  if (where.isOpenOnly) conditions.push("series.state <> 'closed'");
+  if (where.seriesIds?.length === 0) return Promise.resolve([]);
+  return select<SpecimenRow>(
+    db,
+    `SELECT specimens.id, specimens.version, specimens.series_id, specimens.morning_id, specimens.child_id,
+       children.full_name, children.born_on, specimens.number, series.mornings_planned, specimens.label,
+       specimens.volume_ml, specimens.collected_at, specimens.neutralised_at, specimens.neutralised_with,
+       specimens.handed_over_at, specimens.received_at, specimens.laboratory_number, specimens.rejected_at,
+       specimens.reject_reason, sites.zone, sites.id AS site_id, laboratory_profiles.body AS profile
+     FROM specimens
+       JOIN series ON series.id = specimens.series_id
+       JOIN children ON children.id = specimens.child_id
+       JOIN sites ON sites.id = series.site_id
+       JOIN laboratory_profiles ON laboratory_profiles.id = series.laboratory_profile_id
+     WHERE ${conditions.join(' AND ')}
+     ORDER BY specimens.collected_at, specimens.id`,
+    { ...where },
+    transaction,
+  );
+}
+
+const iso = (date: Date | null): string | null => date?.toISOString() ?? null;
+
+/** The specimen as screens see it. `results` is null where the reader may not see any. */
+export function toSpecimen(
+  row: SpecimenRow,
+  results: readonly Result[] | null,
+  now: number,
+): Specimen {
+  const { profile, zone } = row;
+  const collectedAt = row.collected_at.getTime();
+  const cutOffAt = laboratoryCutOffAt({ profile, on: dayOf(collectedAt, zone), zone });
+  const clocks = specimenClocks({
+    profile,
+    collectedAt,
+    neutralisedAt: row.neutralised_at?.getTime() ?? null,
+    pickedUpAt: row.handed_over_at?.getTime() ?? null,
+    receivedAt: row.received_at?.getTime() ?? null,
+    cutOffAt,
+    now,
+  });
+  const neutralise = clocks.find((clock) => clock.step === 'neutralise');
+  const receipt = clocks.find((clock) => clock.step === 'receipt');
+  const receiptBy = receipt?.dueAt ?? collectedAt;
+  const neutraliseBy = neutralise?.dueAt ?? receiptBy;
+  const finalExpectedOn =
+    row.received_at && !row.rejected_at
+      ? dueOn({
+          profile,
+          receivedOn: dayOf(row.received_at.getTime(), zone),
+          stage: 'cultureNegativeFinal',
+        })
+      : null;
+  const isFinal = (results ?? []).some(
+    (result) => result.test === 'culture' && result.finality === 'final',
+  );
+  const overdue =
+    finalExpectedOn !== null &&
+    results !== null &&
+    isOverdue({ dueOn: finalExpectedOn, today: dayOf(now, zone), isReported: isFinal });
+  return {
+    id: row.id,
+    version: row.version,
+    seriesId: row.series_id,
+    childId: row.child_id,
+    childName: row.full_name,
+    bornOn: row.born_on,
+    number: row.number,
+    ofPlanned: row.mornings_planned,
+    label: row.label,
+    volumeMl: Number(row.volume_ml),
+    collectedAt: row.collected_at.toISOString(),
+    neutralisedAt: iso(row.neutralised_at),
+    neutralisedWith: row.neutralised_with,
+    neutraliseBy: new Date(neutraliseBy).toISOString(),
+    handedOverAt: iso(row.handed_over_at),
+    receiptBy: new Date(receiptBy).toISOString(),
+    receivedAt: iso(row.received_at),
+    laboratoryNumber: row.laboratory_number,
+    rejectedAt: iso(row.rejected_at),
+    rejectReason: row.reject_reason,
+    says: specimenSays({
+      zone,
+      now,
+      neutralisedAt: row.neutralised_at?.getTime() ?? null,
+      neutraliseBy,
+      mustBeNeutralised: neutralise !== undefined,
+      handedOverAt: row.handed_over_at?.getTime() ?? null,
+      receivedAt: row.received_at?.getTime() ?? null,
+      receiptBy,
+      rejectedAt: row.rejected_at?.getTime() ?? null,
+      rejectReason: row.reject_reason,
+      label: row.label,
+      finalExpectedOn,
+      isOverdue: overdue,
+      isFinal,
+    }),
+    isLate: clocks.some((clock) => clock.state === 'late' && row.received_at === null),
+    finalExpectedOn,
+    isOverdue: overdue,
+    results: results === null ? null : [...results],
+  };
+}
+
+/** 'Specimen clocks and final days: State laboratory, version 2, signed by Dr. Okafor on ...' */
+export async function laboratorySays(db: Sequelize, siteId: number): Promise<string> {
+  const [row] = await select<{
+    name: string;
+    version: number;
+    signer: string | null;
+    signed_at: Date | null;
+  }>(
+    db,
+    `SELECT laboratory_profiles.name, laboratory_profiles.version, staff.full_name AS signer, signed_at
+     FROM laboratory_profiles LEFT JOIN staff ON staff.id = signed_by_staff_id
+     WHERE site_id = :siteId AND signed_at IS NOT NULL ORDER BY version DESC LIMIT 1`,
+    { siteId },
+  );
+  if (!row) return 'No laboratory profile has been signed yet.';
+  const signedOn = row.signed_at?.toISOString().slice(0, 10) ?? '';
+  return `Specimen clocks and final days: ${row.name}, version ${row.version}, signed by ${row.signer ?? 'a clinician'} on ${signedOn}.`;
+}
