@@ -1,0 +1,43 @@
+import { existsSync } from 'node:fs';
+import { join } from 'node:path';
+import { defineConfig } from '@playwright/test';
+
+// The shell without a window starts twice as fast as the whole browser.
+const browser = ['/usr/bin/chromium-headless-shell', '/usr/bin/chromium'].find((path) =>
+  existsSync(path),
+);
+
+const isRoot = process.getuid?.() === 0;
+
+export default defineConfig({
+  testDir: __dirname,
+  testMatch: '**/*.e2e.ts',
+  outputDir: join(__dirname, '..', '..', 'test-results'),
+  globalSetup: join(__dirname, '..', 'support', 'e2e-house.mjs'),
+  forbidOnly: true,
+  retries: 0,
+  workers: 2,
+  timeout: 90_000,
+  expect: { timeout: 10_000 },
+  reporter: 'list',
+  use: {
+    // Known only when the house stands; the workers read this file again after that.
+    baseURL: process.env['THREEDAWN_ORIGIN'],
+    locale: 'en-US',
+    timezoneId: 'America/Chicago',
+    screenshot: 'only-on-failure',
+    trace: 'retain-on-failure',
+    launchOptions: {
+      executablePath: browser,
+      args: [
+        ...(isRoot ? ['--no-sandbox'] : []),
+        '--disable-gpu',
+        '--disable-quic',
+        '--disable-sync',
+        '--disable-background-networking',
+        '--disable-component-update',
+        '--no-first-run',
+      ],
+    },
+  },
+});
