@@ -1,0 +1,78 @@
+import { HttpClient, HttpErrorResponse } from '@angular/common/http';
+import { Injectable, inject } from '@angular/core';
+import { firstValueFrom, type Observable } from 'rxjs';
+import type { z } from 'zod';
+import { problem, type ProblemDocument } from '../../../../shared/contracts/problem';
+
+/** A request that failed, in words a screen can show. `problem` is null when the server did not answer. */
+export class ClinicFailure extends Error {
+  constructor(
+    readonly status: number,
+    readonly problem: ProblemDocument | null,
+  ) {
+    super(problem?.title ?? $localize`:@@clinic.failure.unreached:The server does not answer.`);
+  }
+
+  get code(): string {
+    return this.problem?.code ?? 'unreached';
+  }
+
+  /** Sentences by dotted path, for the fields of a form. */
+  get fields(): ReadonlyMap<string, string> {
+    return new Map((this.problem?.errors ?? []).map((error) => [error.path, error.message]));
+  }
+}
+
+export function clinicFailure(error: unknown): ClinicFailure {
+  if (error instanceof ClinicFailure) return error;
+  if (error instanceof HttpErrorResponse) {
+    const body = problem.safeParse(error.error);
+    return new ClinicFailure(error.status, body.success ? body.data : null);
+  }
+  return new ClinicFailure(0, null);
+}
+
+/** The clinic's one way to the server: answers are parsed by their contract. Rejects with ClinicFailure only. */
+@Injectable({ providedIn: 'root' })
+export class ClinicHttp {
+  private readonly http = inject(HttpClient);
+
+  get<Schema extends z.ZodType>(path: string, answer: Schema): Promise<z.output<Schema>> {
+    return this.read(this.http.get(`/api/clinic${path}`), answer);
+  }
+
+  post<Schema extends z.ZodType>(
+    path: string,
+    body: object,
+    answer: Schema,
+  ): Promise<z.output<Schema>> {
+    return this.read(this.http.post(`/api/clinic${path}`, body), answer);
+  }
+
+  put<Schema extends z.ZodType>(
+    path: string,
+    body: object,
+    answer: Schema,
+  ): Promise<z.output<Schema>> {
+    return this.read(this.http.put(`/api/clinic${path}`, body), answer);
+  }
+
+  async delete(path: string): Promise<void> {
+    try {
+      await firstValueFrom(this.http.delete(`/api/clinic${path}`));
+    } catch (error) {
+      throw clinicFailure(error);
+    }
+  }
+
+  private async read<Schema extends z.ZodType>(
+    request: Observable<unknown>,
+    answer: Schema,
+  ): Promise<z.output<Schema>> {
+    try {
+      return answer.parse(await firstValueFrom(request));
+    } catch (error) {
+      throw clinicFailure(error);
+    }
+  }
+}

@@ -1,0 +1,49 @@
+import type { Routes } from '@angular/router';
+import { signedInFamily } from '../../common/session/family-guard';
+
+// Each screen comes when it is opened; the worker fetches the rest once the first one stands.
+export const routes: Routes = [
+  {
+    path: '',
+    pathMatch: 'full',
+    loadComponent: () => import('./next-morning/next-morning').then((file) => file.NextMorningPage),
+    canActivate: [signedInFamily],
+  },
+  {
+    path: 'morning',
+    loadComponent: () =>
+      import('./morning-question/morning-question').then((file) => file.MorningQuestionPage),
+    canActivate: [signedInFamily],
+  },
+  {
+    path: 'calendar',
+    loadComponent: () =>
+      import('./calendar/family-calendar').then((file) => file.FamilyCalendarPage),
+    canActivate: [signedInFamily],
+  },
+  {
+    path: 'letters',
+    loadComponent: () => import('./letters/letter-list').then((file) => file.LetterList),
+    canActivate: [signedInFamily],
+  },
+  {
+    path: 'letters/:letterId',
+    loadComponent: () => import('./letters/letter-page').then((file) => file.LetterPage),
+    canActivate: [signedInFamily],
+  },
+  { path: 'i/:token', loadComponent: () => import('./arrive/arrive').then((file) => file.Arrive) },
+  { path: 'm/:token', loadComponent: () => import('./arrive/arrive').then((file) => file.Arrive) },
+  {
+    path: 'code',
+    loadComponent: () => import('./code/sign-in-by-code').then((file) => file.SignInByCode),
+  },
+  {
+    path: 'interpreter',
+    loadComponent: () =>
+      import('./interpreter/ask-interpreter').then((file) => file.AskInterpreter),
+  },
+  {
+    path: '**',
+    loadComponent: () => import('./not-found/not-found').then((file) => file.NotFound),
+  },
+];
