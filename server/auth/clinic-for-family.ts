@@ -43,7 +43,6 @@ function phoneSays(site: Site, wording: Wording, now: number): string {
     const at = instantOf({ on, time, zone: site.zone });
     return wording.text(key, {
       time: familyTime(at, site.zone, wording.profile).time,
-      emergency: site.emergencyNumber,
     });
   };
   if (minutes < minutesOfTime(from)) return say('phone.says.closed', from);

@@ -81,15 +81,22 @@ function faultsOfUnit(original, { source, target }, language) {
 }
 
 function faultsOfIcu(originals, targets, language) {
-  if (originals.length !== targets.length) return ['has other plural or select texts'];
-  return targets.flatMap(({ kind, categories }, index) => {
-    if (kind !== originals[index].kind) return ['has other plural or select texts'];
+  // A plural within a plural stands once for each form of the outer one, so that languages with more
+  // forms repeat it more often: what must agree is what is counted, and how.
+  if (countedIn(originals) !== countedIn(targets)) return ['has other plural or select texts'];
+  return targets.flatMap(({ variable, kind, categories }) => {
     const wanted =
-      kind === 'select' ? originals[index].categories : pluralCategories(language, kind);
+      kind === 'select'
+        ? originals.find((one) => one.variable === variable).categories
+        : pluralCategories(language, kind);
     return wanted
       .filter((category) => !categories.includes(category))
       .map((category) => `has no form for "${category}"`);
   });
+}
+
+function countedIn(icuTexts) {
+  return [...new Set(icuTexts.map(({ variable, kind }) => `${variable} ${kind}`))].sort().join();
 }
 
 function pluralCategories(language, kind) {

@@ -19,7 +19,8 @@ export async function installPackages() {
   if (packagesAreCurrent()) return;
   await step('Installing npm packages', async () => {
     const npm = npmProgram();
-    const args = ['ci', '--no-audit', '--no-fund', '--loglevel=error'];
+    // The build needs what production would leave out.
+    const args = ['ci', '--include=dev', '--no-audit', '--no-fund', '--loglevel=error'];
     await (npm
       ? runNode([npm, ...args], { title: 'npm ci' })
       : runProgram('npm', args, { title: 'npm ci' }));

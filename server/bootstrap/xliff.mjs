@@ -33,13 +33,15 @@ export function plain(text) {
 }
 
 /**
- * The ICU texts within a text, nested ones too: `[{ kind: 'plural' | 'selectordinal' | 'select', categories }]`.
+ * The ICU texts within a text, nested ones too:
+ * `[{ variable, kind: 'plural' | 'selectordinal' | 'select', categories }]`.
  */
 export function icuTextsOf(text) {
   const bare = text.replace(/<[^>]*>/g, '');
   const found = [];
-  for (const match of bare.matchAll(/\{\s*[\w$]+\s*,\s*(plural|selectordinal|select)\s*,/g)) {
-    found.push({ kind: match[1], categories: categoriesFrom(bare, match.index + match[0].length) });
+  for (const match of bare.matchAll(/\{\s*([\w$]+)\s*,\s*(plural|selectordinal|select)\s*,/g)) {
+    const [opening, variable, kind] = match;
+    found.push({ variable, kind, categories: categoriesFrom(bare, match.index + opening.length) });
   }
   return found;
 }

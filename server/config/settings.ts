@@ -68,6 +68,10 @@ export class SettingsError extends Error {
   }
 }
 
+/** Whether mail would go to this machine itself, where only the stand-in listens. */
+const isLoopback = (url: string): boolean =>
+  /^(127\.|localhost$|\[::1\]$)/.test(new URL(url).hostname);
+
 const weakSecret = /^(.)\1*$|password|secret|changeme|example/i;
 
 /** What production refuses: stand-ins, rehearsal, weak secrets, plain http. Root is refused where the process starts. */
@@ -76,7 +80,7 @@ function productionFaults(settings: Settings): string[] {
   if (settings.sms.provider === 'stand-in')
     faults.push('THREEDAWN_SMS_PROVIDER: production does not send texts to the stand-in');
   if (settings.rehearsal) faults.push('THREEDAWN_REHEARSAL: production has no rehearsal');
-  if (/\/\/(127\.|localhost|\[::1\])/.test(settings.mail.url.replace(/\/\/[^@/]*@/, '//')))
+  if (isLoopback(settings.mail.url))
     faults.push('THREEDAWN_MAIL_URL: production does not send mail to the stand-in on loopback');
   if (!settings.origin.startsWith('https://'))
     faults.push('THREEDAWN_ORIGIN: production needs an https address');
@@ -129,6 +133,10 @@ export function readSettings(source: NodeJS.ProcessEnv): Settings {
   if (settings.rehearsal && settings.sms.provider !== 'stand-in')
     throw new SettingsError([
       'THREEDAWN_REHEARSAL: rehearsal works with the stand-ins only, and THREEDAWN_SMS_PROVIDER is a real service',
+    ]);
+  if (settings.rehearsal && !isLoopback(settings.mail.url))
+    throw new SettingsError([
+      'THREEDAWN_REHEARSAL: rehearsal works with the stand-ins only, and THREEDAWN_MAIL_URL is a real service',
     ]);
   if (settings.mode === 'production') {
     const faults = productionFaults(settings);

@@ -2,10 +2,8 @@ import { mkdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { readSettings, SettingsError, type Settings } from '../config/settings';
 import { openContext } from '../open-context';
-import { inTransaction } from './connection';
 import { demoPassword, demoStaff } from './seeds/demo-clinic';
 import { seedDemo } from './seeds/demo';
-import { seedFirstSite } from './seeds/first-site';
 
 /** Invented people and their sign-offs never get into a clinic that is in use. */
 export function refuseDemo(settings: Pick<Settings, 'mode'>): void {
@@ -32,20 +30,12 @@ export function writeDemoSignIns({ dataDir, origin }: Pick<Settings, 'dataDir' |
 
 async function main(): Promise<void> {
   const settings = readSettings(process.env);
-  const isDemo = process.argv.includes('--demo') || settings.rehearsal;
-  if (isDemo) refuseDemo(settings);
+  refuseDemo(settings);
   const context = await openContext(settings, 'seed');
   try {
-    if (isDemo) {
-      const isNew = await seedDemo(context);
-      writeDemoSignIns(settings);
-      process.stdout.write(isNew ? 'Demo clinic: ready\n' : 'Demo clinic: was there already\n');
-    } else {
-      const siteId = await inTransaction(context.db, (transaction) =>
-        seedFirstSite(context.db, transaction),
-      );
-      process.stdout.write(siteId === null ? 'Site: was there already\n' : 'Site: ready\n');
-    }
+    const isNew = await seedDemo(context);
+    writeDemoSignIns(settings);
+    process.stdout.write(isNew ? 'Demo clinic: ready\n' : 'Demo clinic: was there already\n');
   } finally {
     await context.close();
   }

@@ -3,6 +3,7 @@ import type { Instant } from '../../shared/domain/day';
 import { longestEndsAt } from '../../shared/domain/fasting-plan';
 import { invalid } from '../http/problem';
 import type { MorningPlan } from '../series/morning-plans';
+import { shownPhone } from '../messages/shown-phone';
 import { callBackMinutes, dawnPhoneOf } from './check-child';
 import type { FamilyWords } from './family-words';
 import { standardPlanOf, type HouseholdNight } from './household-night';
@@ -55,7 +56,7 @@ function foodFirst({ site }: HouseholdNight, words: FamilyWords): ChangeSaying {
     lines: [
       words.text('outcome.food-first.line'),
       words.text('outcome.food-first.worse', { emergency: site.emergencyNumber }),
-      words.text('outcome.food-first.call', { phone: site.phone }),
+      words.text('outcome.food-first.call', { phone: shownPhone(site.phone, site.country) }),
     ],
     questionKey: 'change.ill.asks',
     answerKey: 'change.ill.awake',
@@ -141,7 +142,7 @@ function late(
       ...(doesAnswer
         ? [
             words.text('outcome.feed-now-and-call.phone', {
-              phone: site.phone,
+              phone: shownPhone(site.phone, site.country),
               time: words.time(phone.answersUntil),
             }),
           ]

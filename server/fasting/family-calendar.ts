@@ -6,6 +6,7 @@ import type { FamilyVisitor } from '../auth/current-user';
 import type { Context } from '../context';
 import { calendarDownload, type CalendarEntry } from '../outbox/calendar-file';
 import { siteOf } from '../sites/sites';
+import { shownPhone } from '../messages/shown-phone';
 import { familyWords, type FamilyWords } from './family-words';
 import { householdOf, standardPlanOf, type Household } from './household-night';
 
@@ -73,7 +74,10 @@ export async function familyCalendarFile(
         uid: plan.calendarUid,
         sequence: plan.calendarSequence,
         title: words.text('calendar.title'),
-        description: words.text('calendar.description', { phone: plan.site.phone, url: origin }),
+        description: words.text('calendar.description', {
+          phone: shownPhone(plan.site.phone, plan.site.country),
+          url: origin,
+        }),
         location: `${plan.site.name}, ${plan.site.address}`,
         startAt: firstArrivalAt,
         endAt: firstArrivalAt + visitMinutes * minute,

@@ -7,6 +7,7 @@ import type { Context } from '../context';
 import { Problem } from '../http/problem';
 import type { MorningPlan } from '../series/morning-plans';
 import { siteOf } from '../sites/sites';
+import { shownPhone } from '../messages/shown-phone';
 import { faceOf, familyWords, protocolSays, type FamilyWords } from './family-words';
 import { householdOf, standardPlanOf, type HouseholdNight } from './household-night';
 import { standingOutcome } from './morning-outcome';
@@ -84,7 +85,10 @@ function stateSays(
   state: MorningQuestion['state'],
   words: FamilyWords,
 ): string {
-  if (state === 'closed') return words.text('question.state.closed', { phone: night.site.phone });
+  if (state === 'closed')
+    return words.text('question.state.closed', {
+      phone: shownPhone(night.site.phone, night.site.country),
+    });
   if (state === 'open')
     return words.text('question.state.open', { time: words.time(night.callListAt) });
   const { questionOpensAt } = night;

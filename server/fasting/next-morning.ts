@@ -11,6 +11,7 @@ import type { Context } from '../context';
 import { select } from '../database/connection';
 import type { MorningPlan } from '../series/morning-plans';
 import { siteOf, type Site } from '../sites/sites';
+import { shownPhone } from '../messages/shown-phone';
 import { faceOf, familyWords, protocolSays, type FamilyWords } from './family-words';
 import {
   householdOf,
@@ -88,7 +89,7 @@ async function planned(
       says: [
         words.text('door.go', { door: site.door, directions: site.doorDirections }),
         words.text('door.ring'),
-        words.text('door.late', { phone: site.phone }),
+        words.text('door.late', { phone: shownPhone(site.phone, site.country) }),
       ],
       address: `${site.name}, ${site.address}`,
     },
@@ -111,7 +112,7 @@ function nothingPlanned(household: Household, site: Site, words: FamilyWords): P
     heading: words.text(isFinished ? 'next-morning.finished.heading' : 'next-morning.none.heading'),
     subheading: isFinished
       ? words.text('next-morning.finished.subheading')
-      : words.text('next-morning.none.subheading', { phone: site.phone }),
+      : words.text('next-morning.none.subheading', { phone: shownPhone(site.phone, site.country) }),
     on: null,
     ...sunsSaid(household, words),
     skies: [],
@@ -218,7 +219,7 @@ async function whoBrings(
   const [youngest] = night.children;
   const carerId = youngest?.nightCarerFamilyMemberId ?? null;
   const escortId = youngest?.escortFamilyMemberId ?? null;
-  const open = words.text('who.open', { phone: night.site.phone });
+  const open = words.text('who.open', { phone: shownPhone(night.site.phone, night.site.country) });
   if (!youngest || (carerId === null && escortId === null)) return [open];
   const people = await select<{
     id: number;

@@ -2,6 +2,7 @@ import type { PathStep } from '../../shared/contracts/family-morning';
 import type { Instant } from '../../shared/domain/day';
 import { addDays, instantOf } from '../../shared/domain/zone';
 import type { MorningPlan } from '../series/morning-plans';
+import { shownPhone } from '../messages/shown-phone';
 import type { FamilyWords } from './family-words';
 import { standardPlanOf, type HouseholdNight } from './household-night';
 import { feedPictures, groupedBy, keyOf, standardChildren, type Step } from './night-steps';
@@ -190,7 +191,7 @@ function gettingUp(night: HouseholdNight, words: FamilyWords): Step[] {
       title: words.text('step.answer.title', { count: children.length }),
       lines: [
         words.text('step.answer.line', { time: words.time(night.callListAt) }),
-        words.text('step.answer.line-call', { phone: site.phone }),
+        words.text('step.answer.line-call', { phone: shownPhone(site.phone, site.country) }),
       ],
       pictures: ['answer-us'],
       children,

@@ -2,6 +2,7 @@ import type { FastingAnswer, OutcomeKind } from '../../shared/contracts/family-m
 import type { Instant } from '../../shared/domain/day';
 import type { FastingCheck, FastingOutcome } from '../../shared/domain/fasting-check';
 import type { MorningPlan } from '../series/morning-plans';
+import { shownPhone } from '../messages/shown-phone';
 import { dawnPhoneOf, type ToldAnswer } from './check-child';
 import type { FamilyWords } from './family-words';
 import { dueAt, standardPlanOf, type HouseholdNight } from './household-night';
@@ -118,7 +119,10 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
         words.text('outcome.all-right'),
         words.text('outcome.stay-we-call.keep-phone'),
         words.text('outcome.stay-we-call.until-then', { children: words.list(plansOf(checked)) }),
-        words.text('outcome.stay-we-call.no-call', { phone: night.site.phone, weCallBy: by }),
+        words.text('outcome.stay-we-call.no-call', {
+          phone: shownPhone(night.site.phone, night.site.country),
+          weCallBy: by,
+        }),
       ],
     };
   },
@@ -148,7 +152,7 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
 function phoneOf({ site, children }: HouseholdNight, words: FamilyWords) {
   const [sample] = children;
   const until = sample ? dawnPhoneOf(sample).answersUntil : 0;
-  return { phone: site.phone, time: words.time(until) };
+  return { phone: shownPhone(site.phone, site.country), time: words.time(until) };
 }
 
 function stillNothing(checked: readonly CheckedChild[], words: FamilyWords): string {

@@ -3,6 +3,7 @@ import { chooseLetter, type LetterChoice } from '../../shared/domain/letter-choi
 import { dueOn, type LaboratoryProfile } from '../../shared/domain/specimen-clocks';
 import { dayOf } from '../../shared/domain/zone';
 import { select } from '../database/connection';
+import { shownPhone } from '../messages/shown-phone';
 import { seriesFactsOf, type SeriesFacts } from '../results/series-results';
 import type { LetterFacts } from './letter-parts';
 
@@ -30,6 +31,7 @@ interface CaseRow {
   readonly born_on: string;
   readonly site_name: string;
   readonly zone: string;
+  readonly country: string;
   readonly phone: string;
   readonly emergency_number: string;
   readonly profile: LaboratoryProfile;
@@ -100,7 +102,7 @@ export async function letterCaseOf(
   if (!series || series.siteId !== siteId) return null;
   const [row] = await select<CaseRow>(
     db,
-    `SELECT children.full_name, children.call_me, children.born_on, sites.name AS site_name, sites.zone, sites.phone,
+    `SELECT children.full_name, children.call_me, children.born_on, sites.name AS site_name, sites.zone, sites.country, sites.phone,
        sites.emergency_number, laboratory_profiles.body AS profile
      FROM series JOIN children ON children.id = series.child_id JOIN sites ON sites.id = series.site_id
        JOIN laboratory_profiles ON laboratory_profiles.id = series.laboratory_profile_id
@@ -127,7 +129,7 @@ export async function letterCaseOf(
       planned: series.morningsPlanned,
       lastAnswerOn: lastAnswerOn(series, row),
       clinicName: row.site_name,
-      clinicPhone: row.phone,
+      clinicPhone: shownPhone(row.phone, row.country),
       emergencyNumber: row.emergency_number,
     },
   };

@@ -3,6 +3,7 @@ import type { FamilyVisitor, StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { notFound } from '../http/problem';
+import { shownPhone } from '../messages/shown-phone';
 import { letterPage } from './letter-page';
 import type { LetterBody } from './sign-letter';
 
@@ -13,11 +14,12 @@ interface PrintRow {
   readonly recipient: string;
   readonly site_name: string;
   readonly address: string;
+  readonly country: string;
   readonly phone: string;
 }
 
 const printColumns = `letters.child_id, letter_recipients.language, letter_recipients.body,
-  family_members.full_name AS recipient, sites.name AS site_name, sites.address, sites.phone
+  family_members.full_name AS recipient, sites.name AS site_name, sites.address, sites.country, sites.phone
   FROM letters JOIN letter_recipients ON letter_recipients.letter_id = letters.id
     JOIN family_members ON family_members.id = letter_recipients.family_member_id
     JOIN series ON series.id = letters.series_id JOIN sites ON sites.id = series.site_id`;
@@ -40,7 +42,7 @@ async function printRow(
       body: row.body,
       language: row.language,
       recipient: row.recipient,
-      letterhead: [row.site_name, row.address, row.phone],
+      letterhead: [row.site_name, row.address, shownPhone(row.phone, row.country)],
     }),
   );
 }

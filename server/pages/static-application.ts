@@ -4,7 +4,7 @@ import type { Request, RequestHandler, Response } from 'express';
 import type { Application } from './built-applications';
 
 /** Names that the build puts a hash into: their content never changes. */
-const hashedName = /-[A-Za-z0-9_-]{8}\.(js|css|woff2|svg|png)$/;
+const hashedName = /-[A-Za-z0-9_-]{8}\.(js|css|woff2?|svg|png)$/;
 const year = 31_536_000;
 
 const encodings = [

@@ -1,4 +1,5 @@
-import type { Sequelize, Transaction } from 'sequelize';
+import { QueryTypes, type Sequelize, type Transaction } from 'sequelize';
+import { startingProtocol } from '../../shared/domain/fasting-protocol';
 import { validateZone } from '../../shared/domain/zone';
 
 export interface FirstSite {
@@ -24,27 +25,58 @@ export function firstSiteFaults({ name, zone, phone }: FirstSite): string[] {
 
 const longestShortName = 40;
 
-/** The first site, with starting values for the hours that the clinic confirms or changes before it plans. */
+/** The starting protocol as the `body` column holds it. */
+export const protocolBody = {
+  usualWaitMinutes: startingProtocol.usualWaitMinutes,
+  eatAgainAfterMinutes: startingProtocol.eatAgainAfterMinutes,
+  bands: startingProtocol.bands,
+};
+
+/**
+ * The first site of a real clinic: hours that the clinic confirms or changes, one room, and the starting protocol,
+ * unsigned. No morning can be planned before a clinician has signed a protocol and a laboratory profile.
+ */
 export async function insertFirstSite(
   db: Sequelize,
   transaction: Transaction,
   { name, zone, phone }: FirstSite,
-): Promise<void> {
-  await db.query(
+): Promise<number> {
+  const [siteId] = await db.query(
     `INSERT INTO sites (name, short_name, zone, country, address, door, door_directions, phone, emergency_number,
        dawn_answers_from_time, dawn_answers_until_time, clinic_weekdays, arrivals_from_time, arrivals_until_time,
        minutes_per_child, places_per_morning, staff_pairs, lead_days, usual_wait_minutes, evening_text_time,
        morning_question_minutes_before, call_list_minutes_before)
-     VALUES (:name, :shortName, :zone, 'US', '', '', '', :phone, '911', '05:00', '08:00', '[1,2,3,4,5]', '07:00',
-       '08:00', 45, 4, 1, 2, 20, '18:00', 90, 60)`,
+     VALUES (:name, :shortName, :zone, 'US', '', '', '', :phone, '911', '05:00', '08:00', '[1,2,3,4,5]', '06:00',
+       '09:00', 30, 5, 1, 2, :usualWaitMinutes, '18:30', 90, 60)`,
     {
+      type: QueryTypes.INSERT,
+      transaction,
       replacements: {
         name: name.trim(),
         shortName: name.trim().slice(0, longestShortName),
         zone,
         phone,
+        usualWaitMinutes: startingProtocol.usualWaitMinutes,
       },
-      transaction,
     },
   );
+  // Curry International TB Center, step 1: a room is closed for an hour where its air changes are not known.
+  await db.query(
+    "INSERT INTO rooms (site_id, name, closure_minutes) VALUES (:siteId, 'Room 1', 60)",
+    { transaction, replacements: { siteId } },
+  );
+  await db.query(
+    `INSERT INTO fasting_protocols (site_id, version, title, effective_on, body, has_starting_values)
+     VALUES (:siteId, 1, :title, :effectiveOn, :body, TRUE)`,
+    {
+      transaction,
+      replacements: {
+        siteId,
+        title: startingProtocol.title,
+        effectiveOn: startingProtocol.effectiveOn,
+        body: JSON.stringify(protocolBody),
+      },
+    },
+  );
+  return siteId;
 }

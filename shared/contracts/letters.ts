@@ -7,7 +7,9 @@ export const paragraph = z.object({
   /** 'fixed', 'must-be-there', 'may-be-left-out', 'still-missing'. */
   standing: z.enum(['fixed', 'must-be-there', 'may-be-left-out', 'still-missing']),
   why: z.string(),
+  clinicHeading: z.string(),
   clinicText: z.string(),
+  familyHeading: z.string(),
   familyText: z.string(),
 });
 export type Paragraph = z.infer<typeof paragraph>;

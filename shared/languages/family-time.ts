@@ -57,7 +57,8 @@ export function familyTime(instant: Instant, zone: string, profile: LanguageProf
   const shownHour = profile.hourCycle === 'h12' ? hour % 12 || 12 : hour;
   const clock = `${shownHour}:${String(minute).padStart(2, '0')}`;
   const dayPart = dayPartAt(hour, profile);
-  const time = fill(profile.patterns.time, { clock, dayPart });
+  const { timeAtOne = profile.patterns.time } = profile.patterns;
+  const time = fill(shownHour === 1 ? timeAtOne : profile.patterns.time, { clock, dayPart });
   const both = readings({ on, time: localTime, zone });
   // Seconds do not show; compare whole minutes.
   const isFirst = instant < both.later;

@@ -3,7 +3,9 @@
  * profile, never code. Months and weekdays are written out, because what Intl knows differs from
  * phone to phone and has no Haitian Creole at all.
  */
+import { arabic } from './profiles/arabic';
 import { english } from './profiles/english';
+import { spanish } from './profiles/spanish';
 import type { LanguageId } from './languages';
 
 export interface DayPart {
@@ -28,12 +30,18 @@ export interface LanguageProfile {
     readonly dayText: string;
     /** {clock} {dayPart}. */
     readonly time: string;
+    /** The same where one o'clock takes other words: Spanish "la 1:00" beside "las 7:00". */
+    readonly timeAtOne?: string;
     /** {dayText} {time}. */
     readonly text: string;
   };
 }
 
-const profiles: Readonly<Partial<Record<LanguageId, LanguageProfile>>> = { en: english };
+const profiles: Readonly<Partial<Record<LanguageId, LanguageProfile>>> = {
+  en: english,
+  es: spanish,
+  ar: arabic,
+};
 
 export function hasProfile(id: LanguageId): boolean {
   return profiles[id] !== undefined;

@@ -69,6 +69,25 @@ describe('the check of translations', () => {
     expect(check(['ar'])).toEqual({ status: 0, faults: '' });
   });
 
+  it('lets a plural within a plural stand once for each form, and wants every one whole', () => {
+    const minutes = (variable: string, forms: string): string =>
+      `{${variable}, plural, ${forms.replaceAll('_', time)}}`;
+    const both = `{H, plural, =1 {${minutes('A', '=1 {1} other {_}')}} other {${minutes('B', '=1 {1} other {_}')}}}`;
+    const six = 'zero {_} one {_} two {_} few {_} many {_} other {_}';
+    const nested = (variable: string): string =>
+      ['zero', 'one', 'two', 'few', 'many', 'other']
+        .map((form) => `${form} {${minutes(form === 'one' ? 'A' : variable, six)}}`)
+        .join(' ');
+    write('family.xlf', xliff([unit('a.left', both)]));
+    write('family.ar.xlf', xliff([unit('a.left', both, `{H, plural, ${nested('B')}}`)], 'ar'));
+    expect(check(['ar'])).toEqual({ status: 0, faults: '' });
+    const lacking = nested('B').replace(`many {${time}}`, '');
+    write('family.ar.xlf', xliff([unit('a.left', both, `{H, plural, ${lacking}}`)], 'ar'));
+    expect(check(['ar']).faults).toContain('no form for "many"');
+    write('family.ar.xlf', xliff([unit('a.left', both, `{H, plural, ${nested('A')}}`)], 'ar'));
+    expect(check(['ar']).faults).toContain('other plural');
+  });
+
   it.each<[fault: string, file: string, words: string]>([
     ['a missing unit', xliff(arabic.slice(1), 'ar'), '"a.title" is missing'],
     ['a unit left over', xliff([...arabic, unit('a.old', 'x', 'y')], 'ar'), '"a.old" is left over'],

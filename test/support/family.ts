@@ -2,6 +2,7 @@ import type { Context } from '../../server/context';
 import { insert } from './insert';
 
 export interface TestFamily {
+  readonly siteId: number;
   readonly householdId: number;
   readonly childId: number;
   readonly guardianId: number;
@@ -59,5 +60,66 @@ export async function addFamily(
     standing: 'helper',
     relationship: 'grandmother',
   });
-  return { householdId, childId, guardianId, helperId };
+  return { siteId, householdId, childId, guardianId, helperId };
+}
+
+/** A planned morning of the child at 7:00 on 14 April 2027, with the order, protocol and room that the tables demand. */
+export async function addPlannedMorning(
+  { db }: Context,
+  { childId, siteId }: TestFamily,
+  arrivalAt: number,
+): Promise<void> {
+  const at = new Date();
+  const roomId = await insert(db, 'rooms', {
+    site_id: siteId,
+    name: 'Room 1',
+    closure_minutes: 35,
+  });
+  const protocolId = await insert(db, 'fasting_protocols', {
+    site_id: siteId,
+    version: 1,
+    title: 'Starting',
+    effective_on: '2027-01-01',
+    body: '{}',
+    has_starting_values: true,
+  });
+  const profileId = await insert(db, 'laboratory_profiles', {
+    site_id: siteId,
+    version: 1,
+    name: 'Laboratory',
+    effective_on: '2027-01-01',
+    body: '{}',
+  });
+  const orderId = await insert(db, 'orders', {
+    child_id: childId,
+    ordered_by_name: 'Test Clinician',
+    answer_to: 'Test Clinic',
+    reason: 'Test',
+    details: '{}',
+    mornings_planned: 3,
+    intends_to_treat: false,
+    created_by_staff_id: 1,
+    created_at: at,
+  });
+  const seriesId = await insert(db, 'series', {
+    child_id: childId,
+    order_id: orderId,
+    site_id: siteId,
+    fasting_protocol_id: protocolId,
+    laboratory_profile_id: profileId,
+    mornings_planned: 3,
+    created_by_staff_id: 1,
+    created_at: at,
+  });
+  await insert(db, 'mornings', {
+    series_id: seriesId,
+    child_id: childId,
+    site_id: siteId,
+    number: 1,
+    planned_on: '2027-04-14',
+    arrival_time: '07:00',
+    arrival_at: new Date(arrivalAt),
+    room_id: roomId,
+    calendar_uid: 'one@test',
+  });
 }

@@ -5,7 +5,7 @@ import { startingProtocol } from '../../../shared/domain/fasting-protocol';
 import { demoLaboratoryProfile } from '../../../shared/domain/specimen-clocks';
 import { dayOf } from '../../../shared/domain/zone';
 import { hashPassword } from '../../auth/passwords';
-import { protocolBody } from './first-site';
+import { protocolBody } from '../../sites/first-site';
 import { insertRow } from './insert-row';
 
 export const demoZone = 'America/Chicago';

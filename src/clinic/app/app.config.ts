@@ -2,13 +2,14 @@ import { provideHttpClient, withFetch, withInterceptors } from '@angular/common/
 import type { ApplicationConfig } from '@angular/core';
 import { provideBrowserGlobalErrorListeners } from '@angular/core';
 import { provideRouter, withComponentInputBinding, withInMemoryScrolling } from '@angular/router';
+import { idleInterceptor } from '../../common/session/idle-interceptor';
 import { signedOutInterceptor } from '../../common/session/signed-out-interceptor';
 import { routes } from './app.routes';
 
 export const appConfig: ApplicationConfig = {
   providers: [
     provideBrowserGlobalErrorListeners(),
-    provideHttpClient(withFetch(), withInterceptors([signedOutInterceptor])),
+    provideHttpClient(withFetch(), withInterceptors([idleInterceptor, signedOutInterceptor])),
     provideRouter(
       routes,
       withComponentInputBinding(),

@@ -31,12 +31,6 @@ const words: readonly ScreenWord[] = [
   { path: '/messages', says: $localize`:@@clinic.nav.messages:Messages`, right: 'messages.read' },
   { path: '/wording', says: $localize`:@@clinic.nav.wording:Wording`, right: 'wording.read' },
   { path: '/set-up', says: $localize`:@@clinic.nav.set-up:Set-up`, right: 'set-up.read' },
-  { path: '/people', says: $localize`:@@clinic.nav.people:Staff`, right: 'people.read' },
-  {
-    path: '/access-record',
-    says: $localize`:@@clinic.nav.access-record:Access record`,
-    right: 'access-record.read',
-  },
   {
     path: '/rehearsal',
     says: $localize`:@@clinic.nav.rehearsal:Rehearsal`,

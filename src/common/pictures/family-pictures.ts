@@ -17,23 +17,27 @@ const atHand: Pictures = {
 /** Pictures that show a direction and turn round in right-to-left. */
 const turning = new Set(['leave-home', 'leave-by-bus', 'papers', 'emergency', 'next']);
 
-const rare = signal<Pictures | null>(null);
-let isFetching = false;
+/** Half of the drawings are seldom asked for: a group comes when the first name of it is not at hand. */
+const groups: (() => Promise<Pictures>)[] = [
+  () => import('./visit-pictures').then((file) => file.visitPictures),
+  () => import('./rare-mouth-pictures').then((file) => file.rareMouthPictures),
+];
+const rare = signal<Pictures>({});
+let fetching: Promise<void> | null = null;
 
-/** Half of the drawings are seldom asked for: they come when the first of them is. */
-async function fetchRare(): Promise<void> {
-  if (isFetching) return;
-  isFetching = true;
-  try {
-    const [mouth, visit] = await Promise.all([
-      import('./rare-mouth-pictures'),
-      import('./visit-pictures'),
-    ]);
-    rare.set({ ...mouth.rareMouthPictures, ...visit.visitPictures });
-  } catch {
-    // No signal: the caption beside the picture says it all; the next picture asks again.
-    isFetching = false;
+async function fetchUntilFound(name: string): Promise<void> {
+  for (let group = groups[0]; group && !rare()[name]; group = groups[0]) {
+    const pictures = await group();
+    groups.shift();
+    rare.update((known) => ({ ...known, ...pictures }));
   }
+}
+
+/** One after the other. With no signal the caption beside the picture says it all; the next picture asks again. */
+function fetchRare(name: string): void {
+  fetching = (fetching ?? Promise.resolve())
+    .then(() => fetchUntilFound(name))
+    .catch(() => undefined);
 }
 
 /**
@@ -41,8 +45,8 @@ async function fetchRare(): Promise<void> {
  * a computed: the answer changes when the rare ones have come.
  */
 export function familyPicture(name: string): Picture | null {
-  const picture = atHand[name] ?? rare()?.[name];
-  if (!picture && rare() === null) void fetchRare();
+  const picture = atHand[name] ?? rare()[name];
+  if (!picture && groups.length > 0) fetchRare(name);
   return picture ?? null;
 }
 

@@ -1,4 +1,3 @@
-import { provideHttpClient } from '@angular/common/http';
 import {
   provideAppInitializer,
   provideBrowserGlobalErrorListeners,
@@ -16,7 +15,6 @@ export const appConfig: ApplicationConfig = {
   providers: [
     provideBrowserGlobalErrorListeners(),
     provideEnvironmentInitializer(() => inject(FamilyScheme).begin()),
-    provideHttpClient(),
     provideRouter(routes, withComponentInputBinding()),
     provideAppInitializer(() => registerWorker()),
     { provide: TitleStrategy, useClass: NeutralTitle },

@@ -12,6 +12,7 @@ import { RouterLink } from '@angular/router';
 import type { CallDoneRequest, CallTask } from '../../../../shared/contracts/calls';
 import type { ClinicFailure } from '../../../common/api/clinic/clinic-http';
 import { MomentPipe } from '../../../common/ui/clinic-times';
+import { PhonePipe } from '../../../common/ui/phone-words';
 import { StateMark } from '../../../common/ui/state-mark/state-mark';
 import {
   firstTaps,
@@ -26,7 +27,7 @@ import { callMark } from './call-words';
 /** One call: interpreter first, whom to call, what to say, and what happened in two taps. */
 @Component({
   selector: 'td-call-sheet',
-  imports: [MomentPipe, RouterLink, StateMark],
+  imports: [MomentPipe, PhonePipe, RouterLink, StateMark],
   templateUrl: './call-sheet.html',
   styleUrl: './call-sheet.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

@@ -19,6 +19,7 @@ import { ClinicUser } from '../../../common/session/clinic-user';
 import { ClockPipe, clockIn, dayIn } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import { PhonePipe } from '../../../common/ui/phone-words';
 import { StateMark } from '../../../common/ui/state-mark/state-mark';
 import { CallSheet } from './call-sheet';
 import { callGroups, callMark, outcomeWords, urgentWords } from './call-words';
@@ -26,7 +27,7 @@ import { callGroups, callMark, outcomeWords, urgentWords } from './call-words';
 /** Calls to make, the most urgent first; the open one is in the address. */
 @Component({
   selector: 'td-calls',
-  imports: [CallSheet, ClockPipe, RouterLink, SheetStates, StateMark],
+  imports: [CallSheet, ClockPipe, PhonePipe, RouterLink, SheetStates, StateMark],
   templateUrl: './calls.html',
   styleUrl: './calls.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

@@ -17,6 +17,7 @@ import type { Caution, Feeding } from '../../../../shared/contracts/common';
 import { ChildrenClient } from '../../../common/api/clinic/children-client';
 import { clinicFailure } from '../../../common/api/clinic/clinic-http';
 import { faultOf, issuesByPath, showFaults } from '../../../common/ui/form/form-faults';
+import { formFieldLook } from '../../../common/ui/form/form-field-look';
 import { cautionWords, feedingWords } from './child-words';
 import { FamilyMemberFields } from './family-member-fields';
 import { familyMemberGroup, familyMemberValue, type FamilyMemberGroup } from './family-member-form';
@@ -38,6 +39,7 @@ const control = <Value>(value: Value): FormControl<Value> =>
   ],
   templateUrl: './add-child.html',
   styleUrls: ['../../../common/ui/form/fields.scss', '../../../common/ui/form/form-page.scss'],
+  providers: [formFieldLook],
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class AddChild {

@@ -12,6 +12,7 @@ import { addFamilyMemberRequest } from '../../../../shared/contracts/children';
 import { ChildrenClient } from '../../../common/api/clinic/children-client';
 import { clinicFailure } from '../../../common/api/clinic/clinic-http';
 import { issuesByPath, showFaults } from '../../../common/ui/form/form-faults';
+import { formFieldLook } from '../../../common/ui/form/form-field-look';
 import { FamilyMemberFields } from './family-member-fields';
 import { familyMemberGroup, familyMemberValue } from './family-member-form';
 
@@ -32,6 +33,7 @@ import { familyMemberGroup, familyMemberValue } from './family-member-form';
     </form>
   `,
   styleUrl: '../../../common/ui/form/form-page.scss',
+  providers: [formFieldLook],
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class AddFamilyMember {

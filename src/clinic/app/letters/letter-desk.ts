@@ -71,6 +71,11 @@ export class LetterDeskScreen {
     );
   }
 
+  protected isFinal(specimen: number): boolean {
+    const results = this.desk()?.specimens.find((one) => one.id === specimen)?.results ?? [];
+    return results.some((result) => result.test === 'culture' && result.finality === 'final');
+  }
+
   protected isLeftOut(key: string): boolean {
     return this.choices().leftOut?.includes(key) ?? false;
   }

@@ -18,6 +18,7 @@ import { addOrderRequest } from '../../../../shared/contracts/orders';
 import { ChildrenClient } from '../../../common/api/clinic/children-client';
 import { clinicFailure } from '../../../common/api/clinic/clinic-http';
 import { faultOf, issuesByPath, showFaults } from '../../../common/ui/form/form-faults';
+import { formFieldLook } from '../../../common/ui/form/form-field-look';
 
 const control = <Value>(value: Value): FormControl<Value> =>
   new FormControl(value, { nonNullable: true });
@@ -34,6 +35,7 @@ const control = <Value>(value: Value): FormControl<Value> =>
   ],
   templateUrl: './add-order.html',
   styleUrls: ['../../../common/ui/form/fields.scss', '../../../common/ui/form/form-page.scss'],
+  providers: [formFieldLook],
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class AddOrder {

@@ -21,6 +21,7 @@ import { languages } from '../../../../shared/languages/languages';
 import type { ClinicFailure } from '../../../common/api/clinic/clinic-http';
 import { ClinicClock } from '../../../common/session/clinic-clock';
 import { faultOf, issuesByPath, showFaults } from '../../../common/ui/form/form-faults';
+import { formFieldLook } from '../../../common/ui/form/form-field-look';
 
 const control = <Value>(value: Value): FormControl<Value> =>
   new FormControl(value, { nonNullable: true });
@@ -37,6 +38,7 @@ const control = <Value>(value: Value): FormControl<Value> =>
   ],
   templateUrl: './consent-form.html',
   styleUrl: '../../../common/ui/form/fields.scss',
+  providers: [formFieldLook],
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class ConsentForm {

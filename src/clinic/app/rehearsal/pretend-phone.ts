@@ -1,15 +1,19 @@
 import {
   ChangeDetectionStrategy,
   Component,
+  type ElementRef,
+  afterRenderEffect,
   computed,
   effect,
   input,
   linkedSignal,
   output,
   untracked,
+  viewChild,
 } from '@angular/core';
 import type { RehearsalState } from '../../../../shared/contracts/rehearsal';
 import { MomentPipe } from '../../../common/ui/clinic-times';
+import { PhonePipe } from '../../../common/ui/phone-words';
 import { PretendText } from './pretend-text';
 
 type Phone = RehearsalState['phones'][number];
@@ -17,7 +21,7 @@ type Phone = RehearsalState['phones'][number];
 /** One pretended phone: its texts, oldest first, and a box to answer. */
 @Component({
   selector: 'td-pretend-phone',
-  imports: [MomentPipe, PretendText],
+  imports: [MomentPipe, PhonePipe, PretendText],
   templateUrl: './pretend-phone.html',
   styleUrl: './pretend-phone.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -30,6 +34,7 @@ export class PretendPhone {
   readonly sent = input(0);
   readonly reply = output<string>();
 
+  private readonly list = viewChild.required<ElementRef<HTMLElement>>('list');
   protected readonly digits: readonly string[] = ['1', '2', '3'];
   private readonly number = computed(() => this.phone().phone);
   protected readonly draft = linkedSignal({ source: this.number, computation: () => '' });
@@ -38,6 +43,12 @@ export class PretendPhone {
   );
 
   constructor() {
+    // Like on any phone the newest text is the one that is seen.
+    afterRenderEffect(() => {
+      this.texts();
+      const list = this.list().nativeElement;
+      list.scrollTop = list.scrollHeight;
+    });
     effect(() => {
       this.sent();
       untracked(() => this.draft.set(''));

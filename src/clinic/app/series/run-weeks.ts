@@ -52,7 +52,6 @@ export class RunWeeks {
 
 const mondayOf = (on: string): string => addDays(on, 1 - weekdayOf(on));
 
-/** A day without places that is refused only because the clinic never opens on it needs no column of its own. */
+/** A weekend on which the clinic never opens needs no column of its own. */
 const isShown = (day: PlanDay): boolean =>
-  !(day.refused.length > 0 && day.refused.every((reason) => reason.code === 'not-a-clinic-day')) ||
-  weekdayOf(day.on) <= 5;
+  weekdayOf(day.on) <= 5 || !day.refused.some((reason) => reason.code === 'not-a-clinic-day');

@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
+import { RouterLink } from '@angular/router';
 import { HouseClient } from '../../../common/api/clinic/house-client';
 import { ClinicUser } from '../../../common/session/clinic-user';
 import { DayPipe, MomentPipe } from '../../../common/ui/clinic-times';
@@ -18,17 +19,20 @@ const weekdays = [
 /** Site, rooms, hours, fasting protocols and laboratory profiles, each with who signed it. */
 @Component({
   selector: 'td-set-up',
-  imports: [SheetStates, DayPipe, MomentPipe],
+  imports: [RouterLink, SheetStates, DayPipe, MomentPipe],
   templateUrl: './set-up.html',
   styleUrl: './set-up.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class SetUpScreen {
   private readonly client = inject(HouseClient);
+  private readonly user = inject(ClinicUser);
 
-  protected readonly zone = inject(ClinicUser).zone;
+  protected readonly zone = this.user.zone;
   protected readonly loaded = new Loaded(() => this.client.setUp());
   protected readonly setUp = this.loaded.value;
+  protected readonly maySeePeople = computed(() => this.user.has('people.read'));
+  protected readonly maySeeAccess = computed(() => this.user.has('access-record.read'));
   protected readonly days = computed(() =>
     (this.setUp()?.site.clinicWeekdays ?? []).map((day) => weekdays[day - 1] ?? '').join(', '),
   );

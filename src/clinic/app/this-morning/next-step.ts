@@ -1,6 +1,7 @@
 import type { Right } from '../../../../shared/access/rights';
 import type { MorningRow, ThisMorning } from '../../../../shared/contracts/this-morning';
 import { clockIn } from '../../../common/ui/clinic-times';
+import { phoneWords } from '../../../common/ui/phone-words';
 
 export type Act =
   | 'arrive'
@@ -277,8 +278,8 @@ const callsOf = (row: MorningRow): Offer[] =>
     act: 'call',
     says:
       index === 0
-        ? $localize`:@@clinic.this-morning.call:Call ${phone}:phone:`
-        : $localize`:@@clinic.this-morning.call-other:${relationship}:relationship:, ${name}:name:: ${phone}:phone:`,
+        ? $localize`:@@clinic.this-morning.call:Call ${phoneWords(phone)}:phone:`
+        : $localize`:@@clinic.this-morning.call-other:${relationship}:relationship:, ${name}:name:: ${phoneWords(phone)}:phone:`,
     phone,
   }));
 

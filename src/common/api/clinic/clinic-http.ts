@@ -1,8 +1,11 @@
 import { HttpClient, HttpErrorResponse } from '@angular/common/http';
 import { Injectable, inject } from '@angular/core';
-import { firstValueFrom, type Observable } from 'rxjs';
+import { firstValueFrom, timeout, type Observable } from 'rxjs';
 import type { z } from 'zod';
 import { problem, type ProblemDocument } from '../../../../shared/contracts/problem';
+
+/** A connection that hangs must not hold a screen; moving the rehearsal's clock takes up to 25 seconds. */
+const waitMs = 40_000;
 
 /** A request that failed, in words a screen can show. `problem` is null when the server did not answer. */
 export class ClinicFailure extends Error {
@@ -59,7 +62,7 @@ export class ClinicHttp {
 
   async delete(path: string): Promise<void> {
     try {
-      await firstValueFrom(this.http.delete(`/api/clinic${path}`));
+      await firstValueFrom(this.http.delete(`/api/clinic${path}`).pipe(timeout(waitMs)));
     } catch (error) {
       throw clinicFailure(error);
     }
@@ -70,7 +73,7 @@ export class ClinicHttp {
     answer: Schema,
   ): Promise<z.output<Schema>> {
     try {
-      return answer.parse(await firstValueFrom(request));
+      return answer.parse(await firstValueFrom(request.pipe(timeout(waitMs))));
     } catch (error) {
       throw clinicFailure(error);
     }

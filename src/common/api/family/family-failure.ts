@@ -1,4 +1,3 @@
-import { HttpErrorResponse } from '@angular/common/http';
 import type { ProblemDocument } from '../../../../shared/contracts/problem';
 
 export type FailureKind =
@@ -39,11 +38,11 @@ export class FamilyFailure extends Error {
 }
 
 /**
- * 0 is no network; 502 to 504 come from what stands between the phone and the clinic (a service worker answers 504
+ * 502 to 504 come from what stands between the phone and the clinic (a service worker answers 504
  * when it is offline), so they say nothing about whether the clinic got the request.
  */
 function kindOf(status: number): FailureKind {
-  if (status === 0 || status === 502 || status === 503 || status === 504) return 'unreached';
+  if (status === 502 || status === 503 || status === 504) return 'unreached';
   if (status === 401) return 'signed-out';
   if (status === 429) return 'too-often';
   return status >= 400 && status < 500 && status !== 408 ? 'refused' : 'broken';
@@ -55,10 +54,11 @@ function problemOf(body: unknown): ProblemDocument | null {
     : null;
 }
 
+/** @param body the answer's JSON, if it had any */
+export function failureOf(status: number, body: unknown): FamilyFailure {
+  return new FamilyFailure(kindOf(status), problemOf(body));
+}
+
 export function familyFailure(error: unknown): FamilyFailure {
-  if (error instanceof FamilyFailure) return error;
-  if (error instanceof HttpErrorResponse) {
-    return new FamilyFailure(kindOf(error.status), problemOf(error.error));
-  }
-  return new FamilyFailure('broken', null);
+  return error instanceof FamilyFailure ? error : new FamilyFailure('broken', null);
 }

@@ -1,0 +1,281 @@
+import { readFile } from 'node:fs/promises';
+import { addDays, dayOf, instantOf } from '../../shared/domain/zone';
+import { calendarEntries } from './support/calendar-file';
+import { FamilyPhone } from './support/family-phone';
+import { password, zone } from './support/house';
+import { LetterDesk } from './support/letter-desk';
+import {
+  addChild,
+  addOrder,
+  planFirstRun,
+  recordConsent,
+  type Adult,
+  type PlannedMorning,
+} from './support/new-child';
+import { RehearsalScreen } from './support/rehearsal-screen';
+import { ResultsScreen, type Entry } from './support/results-screen';
+import { SpecimensScreen } from './support/specimens-screen';
+import { expectNeutral, linkIn } from './support/stand-ins';
+import { ThisMorningScreen } from './support/this-morning-screen';
+import { expect, test, toScreen } from './support/walk';
+
+const mother: Adult = {
+  fullName: 'Elif Aksoy',
+  relationship: 'mother',
+  phone: '312 555 0191',
+  email: 'elif.aksoy@example.org',
+  isHelper: false,
+};
+const grandmother: Adult = {
+  fullName: 'Nurten Aksoy',
+  relationship: 'grandmother',
+  phone: '312 555 0192',
+  email: null,
+  isHelper: true,
+};
+const motherPhone = '+13125550191';
+const motherMail = 'elif.aksoy@example.org';
+
+// Families of the demo clinic; their children come on its next morning.
+const salma = { name: 'Salma Haddad', phone: '+13125550121', child: 'Idris Haddad' };
+const parwin = { name: 'Parwin Rahimi', phone: '+13125550111', child: 'Noor Rahimi' };
+
+test('a child goes through the whole chain, from the order to the opened letter', async ({
+  house,
+  people,
+}) => {
+  test.setTimeout(300_000);
+  const { standIns } = house;
+  await house.awake();
+  const child = {
+    fullName: 'Deniz Aksoy',
+    callMe: 'Deniz',
+    familyLabel: 'Little bear',
+    // Two years and two months: least 6 hours, longest 13.
+    bornOn: addDays(await house.today(), -800),
+    adults: [mother, grandmother],
+  };
+  const secrets = [child.fullName, child.callMe, child.bornOn, mother.fullName, 'Aksoy'];
+
+  const rosa = await people.staff('rosa');
+  const okafor = await people.staff('okafor');
+  const phone = new FamilyPhone(await people.phone());
+  let mornings: readonly PlannedMorning[] = [];
+  let household = '';
+
+  await test.step('the nurse adds the child with the family, and the order', async () => {
+    await toScreen(rosa, 'Children');
+    await addChild(rosa, child);
+    household = rosa.url();
+    await addOrder(rosa, child);
+  });
+
+  await test.step('the clinician signs the order, the nurse records the consent', async () => {
+    await toScreen(okafor, 'Orders');
+    await okafor.getByRole('link', { name: child.fullName }).click();
+    await okafor.getByRole('button', { name: 'Sign this order' }).click();
+    await expect(okafor.getByText('Signed by Dr. Ines Okafor')).toBeVisible();
+    await recordConsent(rosa, mother);
+    await expect(rosa.getByText('Signed by Dr. Ines Okafor')).toBeVisible();
+  });
+
+  await test.step('three mornings from the first run, with who brings the child', async () => {
+    mornings = await planFirstRun(rosa, child, [mother, grandmother, mother]);
+    expect(mornings).toHaveLength(3);
+    await rosa.getByRole('link', { name: 'Open the record' }).click();
+    await expect(rosa.locator('ol.mornings > li')).toHaveCount(3);
+  });
+  const [first] = mornings;
+  if (!first) throw new Error('No morning was planned.');
+
+  await test.step('calendar entries and the invitation reach phone and mailbox', async () => {
+    const mails = await standIns.mailsLike(motherMail, /in the morning/, 3);
+    // Each mail carries its entry twice: for calendars that read the mail, and as a file.
+    const entries = new Map(
+      mails.flatMap(({ attachments }) =>
+        attachments.flatMap(({ content }) =>
+          calendarEntries(content).map((entry) => [entry.uid, entry] as const),
+        ),
+      ),
+    );
+    expect([...entries.values()].map(({ startsAt }) => startsAt).sort()).toEqual(
+      mornings.map(({ on, arrivalTime }) => instantOf({ on, time: arrivalTime, zone })),
+    );
+    for (const mail of mails) {
+      expectNeutral(`${mail.subject} ${mail.body}`, secrets);
+      for (const { content } of mail.attachments)
+        expectNeutral(
+          calendarEntries(content)
+            .map(({ text }) => text)
+            .join(),
+          secrets,
+        );
+    }
+    await rosa
+      .locator('.member')
+      .filter({ hasText: mother.fullName })
+      .first()
+      .getByRole('button', { name: 'Send the invitation' })
+      .click();
+    await expect(rosa.getByText('The invitation is on its way.')).toBeVisible();
+    const text = await standIns.text(motherPhone, /\/i\//);
+    const [mail] = await standIns.mailsLike(motherMail, /^Your visits/, 1);
+    expectNeutral(text.body, secrets);
+    expectNeutral(`${mail?.subject} ${mail?.body}`, secrets);
+    expect(linkIn(mail?.body ?? '', 'i')).toBe(linkIn(text.body, 'i'));
+  });
+
+  await test.step('the mother opens the link, reads the night path, keeps the calendar file', async () => {
+    const { body } = await standIns.text(motherPhone, /\/i\//);
+    await phone.arrive(linkIn(body, 'i'), child.bornOn);
+    await expect(phone.page).not.toHaveURL(/\/i\//);
+    expect(await phone.page.title()).not.toMatch(/Deniz|Aksoy|tubercul/i);
+    await expect(
+      phone.page.getByRole('region', { name: 'Your night, step by step' }),
+    ).toBeVisible();
+    await expect(phone.page.getByRole('heading', { name: 'What to bring' })).toBeVisible();
+    await phone.page.getByRole('link', { name: 'Calendar' }).click();
+    await expect(phone.heading('Calendar')).toBeVisible();
+    const download = phone.page.waitForEvent('download');
+    await phone.page.getByRole('link', { name: 'Put them into my calendar' }).click();
+    const entries = calendarEntries(await readFile(await (await download).path(), 'utf8'));
+    expect(entries.map(({ title }) => title)).toEqual(Array(3).fill('Clinic visit'));
+    const [mail] = await standIns.mailsLike(motherMail, /in the morning/, 3);
+    const [mailed] = calendarEntries(mail?.attachments[0]?.content ?? '');
+    const same = entries.find(({ uid }) => uid === mailed?.uid);
+    expect(same?.sequence).toBe(mailed?.sequence);
+    expect(same?.title).toBe(mailed?.title);
+  });
+
+  const board = new ThisMorningScreen(await rosa.context().newPage());
+  await board.open();
+  const rehearsal = new RehearsalScreen(rosa);
+  await rehearsal.open();
+
+  await test.step('the demo families answer by text, the open sheet and the calls follow', async () => {
+    await rehearsal.toMoment(/^Evening text/);
+    await rehearsal.toMoment(/^Morning question/);
+    while (!(await standIns.texts(salma.phone)).some(({ body }) => /1 = nothing/.test(body)))
+      await rehearsal.quarterOn();
+    await expect(board.said(salma.child)).toContainText('Nothing yet');
+    await rehearsal.answer(salma.name, '1');
+    await expect(board.said(salma.child)).toContainText(/nothing since/i);
+    await standIns.text(salma.phone, /You told us: nothing/);
+    await rehearsal.answer(parwin.name, '2');
+    await expect(board.said(parwin.child)).not.toContainText('Nothing yet');
+    await toScreen(okafor, 'Calls');
+    const call = okafor.locator('li.call').filter({ hasText: parwin.child });
+    await expect(call).toContainText(`${parwin.name} was asked to call us before leaving.`);
+  });
+
+  const wholeMorning = async (morning: PlannedMorning, number: number): Promise<void> => {
+    const before = (await standIns.texts(motherPhone)).length;
+    await house.moveTo(instantOf({ on: addDays(morning.on, -1), time: '12:00', zone }));
+    await rehearsal.toMoment(/^Evening text/);
+    const evening = await standIns.text(motherPhone, /no food, no drink, no water/, before);
+    expectNeutral(evening.body, secrets);
+    expect(evening.body).toContain(child.familyLabel);
+    await rehearsal.toMoment(/^Morning question/);
+    const isAsked = async (): Promise<boolean> =>
+      (await standIns.texts(motherPhone))
+        .slice(before)
+        .some(({ body }) => /1 = nothing/.test(body));
+    while (!(await isAsked())) await rehearsal.quarterOn();
+    const question = await standIns.text(motherPhone, /1 = nothing/, before);
+    expectNeutral(question.body, secrets);
+
+    await expect(board.said(child.fullName)).toContainText('Nothing yet');
+    await phone.page.goto(linkIn(question.body, 'm'));
+    await phone.answerNothing();
+    await expect(phone.heading(/^Come\. Be at Door B/)).toBeVisible();
+    await expect(board.said(child.fullName)).toContainText(/nothing since/i);
+    await house.moveTo(instantOf({ on: morning.on, time: morning.arrivalTime, zone }));
+    const [, bringer = mother] = number === 2 ? [mother, grandmother] : [];
+    await board.run(child.fullName, { label: `AS-91${number}`, broughtBy: bringer.fullName });
+    await board.expectNeverReloaded();
+
+    await toScreen(okafor, 'Specimens');
+    await new SpecimensScreen(okafor).toLaboratory(child.fullName, number, `L91${number}`);
+  };
+  for (const [index, morning] of mornings.entries())
+    await test.step(`morning ${index + 1}`, () => wholeMorning(morning, index + 1));
+
+  await test.step('preliminary and final results, each final one with a second look', async () => {
+    await house.moveDays(8);
+    await toScreen(rosa, 'Results');
+    const results = new ResultsScreen(rosa, child.fullName);
+    const culture = { test: 'Culture' } as const;
+    const numbers = [1, 2, 3];
+    const early: readonly Entry[] = [
+      { specimen: 1, test: 'Smear', answer: 'No acid-fast bacilli seen', finality: 'final' },
+      { specimen: 1, test: 'Amplification', answer: 'Not detected', finality: 'final' },
+      ...numbers.map((specimen): Entry => ({
+        ...culture,
+        specimen,
+        answer: 'No growth so far',
+        finality: 'preliminary',
+      })),
+    ];
+    for (const entry of early) await results.enter(entry);
+    await house.moveDays(36);
+    for (const specimen of numbers)
+      await results.enter({
+        ...culture,
+        specimen,
+        answer: 'No growth, culture ended',
+        finality: 'final',
+      });
+    await toScreen(okafor, 'Results');
+    expect(await new ResultsScreen(okafor, child.fullName).confirmAll()).toBe(5);
+  });
+
+  const textsBefore = (await standIns.texts(motherPhone)).length;
+  await test.step('the letter that the results allow is signed and released', async () => {
+    await toScreen(okafor, 'Letters');
+    const desk = new LetterDesk(okafor);
+    await desk.open(child.fullName);
+    const nextVisit = addDays(dayOf(await house.now(), zone), 14);
+    await desk.settle({ nextVisit, password });
+  });
+
+  await test.step('the family hears that a letter waits, and nothing more', async () => {
+    const text = await standIns.text(motherPhone, /A letter is ready/, textsBefore);
+    const [mail] = await standIns.mailsLike(motherMail, /a letter is ready/, 1);
+    expectNeutral(text.body, secrets);
+    expectNeutral(`${mail?.subject} ${mail?.body}`, secrets);
+    await phone.page.goto(linkIn(text.body, ''));
+  });
+
+  await test.step('the mother reads it with a code, the clinic sees that it was opened', async () => {
+    await expect(phone.heading('Letters')).toBeVisible();
+    const sent = (await standIns.texts(motherPhone)).length;
+    await phone.page.getByRole('button', { name: /^Send me a code.*text/s }).click();
+    const { body } = await standIns.text(motherPhone, /Your code is \d{6}/, sent);
+    expectNeutral(body, secrets);
+    await phone.page.getByLabel('Code with 6 digits').fill(/\d{6}/.exec(body)?.[0] ?? '');
+    await phone.page.getByRole('button', { name: 'Open', exact: true }).click();
+    await phone.page.getByRole('link', { name: /New/ }).click();
+    await expect(phone.page.getByRole('article')).toContainText(
+      'Deniz can still have tuberculosis. In small children the germ is often not found',
+    );
+    await expect(phone.page.getByRole('article')).toContainText(
+      'This test alone does not rule it out.',
+    );
+
+    await toScreen(okafor, 'Letters');
+    const letter = okafor.locator('li.letter').filter({ hasText: child.fullName });
+    await expect(letter.getByText(`${mother.fullName} opened it`)).toBeVisible();
+    const address = await letter.getByRole('link', { name: 'Print' }).getAttribute('href');
+    const pdf = await okafor.request.get(address ?? '');
+    expect(pdf.status()).toBe(200);
+    expect(pdf.headers()['content-type']).toContain('application/pdf');
+    expect((await pdf.body()).subarray(0, 5).toString()).toBe('%PDF-');
+  });
+
+  await test.step('everything stands on the child’s record', async () => {
+    await rosa.goto(household);
+    const happened = rosa.getByRole('region', { name: 'Everything that happened' });
+    await expect(happened).toContainText(/letter/i);
+    await expect(happened).toContainText(/consent/i);
+  });
+});

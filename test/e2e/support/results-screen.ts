@@ -1,0 +1,52 @@
+import type { Locator, Page } from '@playwright/test';
+import { expect } from './walk';
+
+export interface Entry {
+  readonly specimen: number;
+  readonly test: 'Smear' | 'Amplification' | 'Culture';
+  readonly answer: string;
+  readonly finality: 'preliminary' | 'final';
+}
+
+/** Results of one child: entered by one person, confirmed by another. */
+export class ResultsScreen {
+  constructor(
+    readonly page: Page,
+    private readonly child: string,
+  ) {}
+
+  private series(): Locator {
+    return this.page
+      .locator('section.series')
+      .filter({ has: this.page.getByRole('link', { name: this.child }) });
+  }
+
+  private specimen(number: number): Locator {
+    return this.series()
+      .locator('li.specimen')
+      .filter({ has: this.page.getByRole('heading', { name: `Specimen ${number}`, exact: true }) });
+  }
+
+  async enter({ specimen, test, answer, finality }: Entry): Promise<void> {
+    const part = this.specimen(specimen);
+    await part.getByRole('button', { name: 'Enter a result' }).click();
+    await part.getByLabel('Test').selectOption({ label: test });
+    await part.getByLabel('Answer on the report').selectOption({ label: answer });
+    await part.getByRole('radio', { name: finality }).check();
+    await part.getByRole('button', { name: 'Keep this result' }).click();
+    await expect(part.getByRole('button', { name: 'Enter a result' })).toBeVisible();
+    await expect(part.locator('.answers')).toContainText(answer, { ignoreCase: true });
+  }
+
+  /** Confirms all that waits for this person's second look. @returns how many. */
+  async confirmAll(): Promise<number> {
+    const buttons = this.series().getByRole('button', { name: 'Confirm against the report' });
+    await expect(buttons.first()).toBeVisible();
+    const count = await buttons.count();
+    for (let left = count; left > 0; left -= 1) {
+      await buttons.first().click();
+      await expect(buttons).toHaveCount(left - 1);
+    }
+    return count;
+  }
+}

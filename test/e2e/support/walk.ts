@@ -1,0 +1,77 @@
+import { test as base, expect, type BrowserContext, type Page } from '@playwright/test';
+import { CleanConsole } from './clean-console';
+import { House, password, signInOf, type Who } from './house';
+
+export { expect };
+
+/** Opens the browsers of the people in a walk; all of their consoles are watched. */
+export interface People {
+  /** A signed-in member of staff at a desk. */
+  readonly staff: (who: Who) => Promise<Page>;
+  /** A family's phone: narrow, touch, nothing known yet. */
+  readonly phone: () => Promise<Page>;
+  /** A visitor at a desk who is not signed in. */
+  readonly visitor: () => Promise<Page>;
+}
+
+interface Fixtures {
+  readonly house: House;
+  readonly clean: CleanConsole;
+  readonly people: People;
+}
+
+const desk = { viewport: { width: 1280, height: 900 } };
+const phone = {
+  viewport: { width: 390, height: 844 },
+  hasTouch: true,
+  isMobile: true,
+  deviceScaleFactor: 2,
+};
+
+export const test = base.extend<Fixtures>({
+  house: async ({}, use) => {
+    const house = await House.open();
+    await use(house);
+    await house.close();
+  },
+  clean: async ({}, use) => {
+    const clean = new CleanConsole();
+    await use(clean);
+    expect(clean.complaints, 'the consoles of all pages').toEqual([]);
+  },
+  people: async ({ browser, clean }, use) => {
+    const contexts: BrowserContext[] = [];
+    const open = async (options: Parameters<typeof browser.newContext>[0]): Promise<Page> => {
+      const context = await browser.newContext(options);
+      clean.watch(context);
+      contexts.push(context);
+      return context.newPage();
+    };
+    await use({
+      staff: async (who) => {
+        const page = await open(desk);
+        await signIn(page, who);
+        return page;
+      },
+      phone: () => open(phone),
+      visitor: () => open(desk),
+    });
+    for (const context of contexts) await context.close();
+  },
+});
+
+export async function signIn(page: Page, who: Who): Promise<void> {
+  await page.goto('/clinic/en/sign-in');
+  await page.getByLabel('E-mail').fill(signInOf(who));
+  await page.getByLabel('Password').fill(password);
+  await page.getByRole('button', { name: 'Sign in' }).click();
+  await expect(page.getByRole('button', { name: 'Sign out' })).toBeVisible();
+}
+
+/** Goes to a screen by its word in the menu, without a new page load. */
+export async function toScreen(page: Page, word: string): Promise<void> {
+  await page
+    .getByRole('navigation', { name: 'Screens' })
+    .getByRole('link', { name: word, exact: true })
+    .click();
+}
