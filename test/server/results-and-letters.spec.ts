@@ -384,7 +384,10 @@ describe('the letter', () => {
       'SELECT id, reason FROM call_tasks WHERE series_id = :seriesId AND done_at IS NULL',
       { seriesId },
     );
-    expect(calls.map((call) => call.reason).sort()).toEqual(['positive-result', 'report-to-health-department']);
+    expect(calls.map((call) => call.reason).sort()).toEqual([
+      'positive-result',
+      'report-to-health-department',
+    ]);
     const held = await sign({
       choices,
       release: true,
