@@ -4,7 +4,7 @@ import { clinicSessionRoutes } from './auth/clinic-session-routes';
 import { knowFamily } from './auth/family-visitors';
 import { familySessionRoutes } from './auth/family-session-routes';
 import { clinicSessions, familySessions } from './auth/sessions';
-import { knowStaff, staffAuthenticator } from './auth/staff-sign-in';
+import { knowClinicLanguage, knowStaff, staffAuthenticator } from './auth/staff-sign-in';
 import { accessRecordRoutes } from './access-record/access-record-routes';
 import { callRoutes } from './calls/call-routes';
 import { childrenRoutes } from './children/children-routes';
@@ -74,6 +74,7 @@ export function buildApp(context: Context): Express {
 
   app.use(securityHeaders({ isProduction: settings.mode === 'production' }));
   app.use(requestLog(log));
+  app.use('/api/clinic', knowClinicLanguage);
   app.use('/api', sameOrigin(settings.origin), express.json({ limit: '64kb' }));
   app.use('/api/clinic', clinicSessions(context), passport.session() as RequestHandler, knowStaff);
   app.use('/api/family', familySessions(context), knowFamily(context));

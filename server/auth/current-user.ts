@@ -1,4 +1,5 @@
 import type { Request } from 'express';
+import type { ClinicLanguage } from '../../shared/languages/clinic-languages';
 import type { Actor } from '../access-record/record';
 import { Problem } from '../http/problem';
 
@@ -8,6 +9,8 @@ export interface StaffMember {
   readonly fullName: string;
   readonly roles: readonly string[];
   readonly siteId: number;
+  /** In which the screen of this request speaks; not kept, another window may speak another one. */
+  readonly language: ClinicLanguage;
 }
 
 /** Family member of this request, put there by the family's session. */
@@ -22,6 +25,8 @@ export interface FamilyVisitor {
 
 declare module 'express-serve-static-core' {
   interface Request {
+    /** Of requests to the clinic's side, signed in or not. */
+    clinicLanguage?: ClinicLanguage;
     staffMember?: { readonly staff: StaffMember; readonly actor: Actor };
     familyVisitor?: { readonly visitor: FamilyVisitor; readonly actor: Actor };
   }

@@ -8,6 +8,7 @@ import type { Wording } from '../wording/render';
 import { clinicForFamily, wordingFor } from './clinic-for-family';
 import { familyStanding, reachOf } from './family-visitors';
 import type { FamilyStanding } from './family-visitors';
+import { builtLanguages } from '../../shared/languages/languages';
 
 export interface OpenFamilySession {
   readonly familyMemberId: number;
@@ -36,7 +37,7 @@ export async function describeFamilySession(
         ? new Date(session.freshUntil).toISOString()
         : null,
     standing: member.standing,
-    language: member.language,
+    language: isBuilt(member.language) ? member.language : 'en',
     maySeeLetters: member.standing === 'guardian' && member.seesResults,
     codeGoesTo: codeGoesTo(member, wording),
     clinic: await clinicForFamily(context, member.siteId, member.language),
@@ -92,3 +93,6 @@ async function whatOpens(
   );
   return row ? 'morning-question' : 'next-morning';
 }
+
+/** The pages come in the person's language, or in English with every text still held to its own sign-off. */
+const isBuilt = (language: string): boolean => builtLanguages.some(({ id }) => id === language);

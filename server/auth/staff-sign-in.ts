@@ -2,6 +2,7 @@ import type { Request, RequestHandler } from 'express';
 import { Passport } from 'passport';
 import type { Authenticator } from 'passport';
 import { Strategy } from 'passport-local';
+import { clinicLanguages, isClinicLanguage } from '../../shared/languages/clinic-languages';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { clearHits, countHit, isLimited, tooMany } from '../http/limit';
@@ -43,6 +44,7 @@ export async function activeStaff(db: Context['db'], staffId: number): Promise<S
     fullName: row.full_name,
     roles: row.roles?.split(',') ?? [],
     siteId: row.site_id ?? 0,
+    language: 'en',
   };
 }
 
@@ -87,12 +89,19 @@ export function staffAuthenticator(context: Context): Authenticator {
   return passport;
 }
 
+/** Puts on the request in which language the clinic's screen speaks: its pages say so with every request. */
+export const knowClinicLanguage: RequestHandler = (req, _res, next) => {
+  const wanted = req.acceptsLanguages(...clinicLanguages);
+  req.clinicLanguage = wanted !== false && isClinicLanguage(wanted) ? wanted : 'en';
+  next();
+};
+
 /** Puts the staff member of the session on the request. */
 export const knowStaff: RequestHandler = (req, _res, next) => {
   const staff = req.user as StaffMember | undefined;
   if (staff)
     req.staffMember = {
-      staff,
+      staff: { ...staff, language: req.clinicLanguage ?? staff.language },
       actor: {
         side: 'clinic',
         id: staff.id,

@@ -4,7 +4,7 @@ import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { morningPlansOf, type MorningPlan } from '../series/morning-plans';
-import { loadWording } from '../wording/render';
+import { clinicWording, clinicWords } from '../wording/clinic-words';
 import {
   callPeople,
   doneCallRows,
@@ -28,7 +28,7 @@ export async function listCalls(
   const [open, done, wording] = await Promise.all([
     openCallRows(db, staff),
     doneCallRows(db, staff, now - dayMs),
-    loadWording(db, 'en'),
+    clinicWording(db, staff.language),
   ]);
   const rows = [...open, ...done];
   const people = await callPeople(db, unique(rows.map((row) => row.household_id)));
@@ -41,7 +41,7 @@ export async function listCalls(
     at: now,
   });
   const says = (row: CallRow): string =>
-    callSays(row, { wording, person: personOf(row, people), seesResults });
+    callSays(row, { wording, words: clinicWords(staff.language), person: personOf(row, people), seesResults });
   return {
     open: open.map((row) => {
       const person = personOf(row, people);
@@ -72,7 +72,7 @@ export async function listCalls(
       outcome: row.outcome ?? 'not-needed',
       note: isAboutResults(row.reason) && !seesResults ? null : row.note,
       doneAt: (row.done_at ?? row.created_at).toISOString(),
-      doneBy: row.done_by ?? 'The system',
+      doneBy: row.done_by ?? clinicWords(staff.language).text('clinic.the-system'),
     })),
   };
 }

@@ -1,5 +1,6 @@
 import { familyDay, familyStopTime, familyTime } from '../../shared/languages/family-time';
 import type { MorningPlan } from '../series/morning-plans';
+import type { ClinicWords } from '../wording/clinic-words';
 import type { Wording } from '../wording/render';
 import type { CallPerson, CallRow } from './call-rows';
 
@@ -30,13 +31,18 @@ export const onlyClinicianTells = (reason: string): boolean => clinicianTells.ha
 
 export function callSays(
   row: CallRow,
-  { wording, person, seesResults }: SaysWith & { readonly seesResults: boolean },
+  {
+    wording,
+    words,
+    person,
+    seesResults,
+  }: SaysWith & { readonly seesResults: boolean; readonly words: ClinicWords },
 ): string {
   if (isAboutResults(row.reason) && !seesResults) return wording.text('call.says.hidden');
   const who = person?.full_name ?? wording.text('call.who.family');
   const key = `call.says.${row.reason}`;
   const says = wording.has(key) ? wording.text(key, { who }) : wording.text('call.says.other');
-  return row.detail ? `${says} ${row.detail}` : says;
+  return row.detail ? `${says} ${words.sentence(row.detail)}` : says;
 }
 
 interface SaysWith {

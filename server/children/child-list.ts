@@ -6,6 +6,7 @@ import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { siteOf } from '../sites/sites';
+import { clinicWords } from '../wording/clinic-words';
 import { latestOrders, nextStep } from './next-step';
 import { withinReach } from './reach';
 
@@ -70,7 +71,7 @@ export async function listChildren(
     children: rows.map((row) => ({
       ...row,
       languages: row.languages?.split('\n') ?? [],
-      next: nextStep(orders.get(row.id), today),
+      next: nextStep(clinicWords(staff.language), orders.get(row.id), today),
     })),
     total: count?.total ?? 0,
   };

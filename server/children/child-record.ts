@@ -4,7 +4,6 @@ import type { ChildRecord } from '../../shared/contracts/children';
 import type { Caution, Feeding, MorningState } from '../../shared/contracts/common';
 import { compareDays, type Day } from '../../shared/domain/day';
 import { dayOf } from '../../shared/domain/zone';
-import { ageInWords } from '../../shared/languages/clinic-words';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
@@ -12,6 +11,8 @@ import { select } from '../database/connection';
 import { notFound } from '../http/problem';
 import { localTimeOfColumn, siteOf } from '../sites/sites';
 import { familyMembersOf } from './family-members';
+import { ageInWords } from '../wording/clinic-measures';
+import { clinicWords } from '../wording/clinic-words';
 import { happeningsOf } from './happenings';
 import { childInReach } from './reach';
 
@@ -72,7 +73,7 @@ export async function readChild(
   return {
     ...child,
     // In a rehearsal the clock can be moved before the birth; the record still opens.
-    ageInWords: ageInWords(child.bornOn, latest(child.bornOn, today)),
+    ageInWords: ageInWords(clinicWords(staff.language), child.bornOn, latest(child.bornOn, today)),
     siblings,
     familyMembers,
     orders,

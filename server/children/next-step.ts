@@ -1,8 +1,8 @@
 import type { Sequelize } from 'sequelize';
 import { addDays, type Day } from '../../shared/domain/day';
-import { dayInWords } from '../../shared/languages/clinic-words';
 import { select } from '../database/connection';
 import { localTimeOfColumn } from '../sites/sites';
+import type { ClinicWords } from '../wording/clinic-words';
 
 export interface LatestOrder {
   readonly childId: number;
@@ -18,19 +18,28 @@ export interface LatestOrder {
 }
 
 /** What stands next for a child, in words; names no result, so that every role may read it. */
-export function nextStep(order: LatestOrder | undefined, today: Day): string {
-  if (!order) return 'No order yet.';
+export function nextStep(
+  words: ClinicWords,
+  order: LatestOrder | undefined,
+  today: Day,
+): string {
+  const say = (key: string): string => words.text(`clinic.step.${key}`);
+  if (!order) return say('no-order');
   if (order.seriesState === null) {
-    if (!order.isSigned) return 'The order waits for a signature.';
-    return order.hasConsent ? 'Mornings to be planned.' : 'Consent to be taken.';
+    if (!order.isSigned) return say('signature');
+    return say(order.hasConsent ? 'to-plan' : 'consent');
   }
   if (order.next) {
     const { number, ofPlanned, on, arrivalTime } = order.next;
-    const day =
-      on === today ? 'today' : on === addDays(today, 1) ? 'tomorrow' : `on ${dayInWords(on)}`;
-    return `Morning ${number} of ${ofPlanned} ${day}, ${arrivalTime}.`;
+    const when = on === today ? 'today' : on === addDays(today, 1) ? 'tomorrow' : 'on-day';
+    return words.text(`clinic.step.${when}`, {
+      number,
+      of: ofPlanned,
+      day: words.day(on),
+      time: arrivalTime,
+    });
   }
-  return order.seriesState === 'closed' ? 'Series closed.' : 'Specimens with the laboratory.';
+  return say(order.seriesState === 'closed' ? 'closed' : 'laboratory');
 }
 
 interface OrderRow {

@@ -48,9 +48,7 @@ export function noteFeeding(
     });
     const isBefore = event === 'fed' && plan.state === 'here';
     return {
-      warnings: isBefore
-        ? ['Fed before the collection: the clinician plans this morning again.']
-        : [],
+      warnings: isBefore ? [step.words.text('clinic.warning.fed-before')] : [],
     };
   });
 }

@@ -5,8 +5,6 @@ import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { changedMeanwhile, notFound, Problem } from '../http/problem';
-import type { MorningPlan } from '../series/morning-plans';
-import { clinicClock } from '../specimens/specimen-says';
 import { doorIntakeAt } from './fast-so-far';
 import type { DoorCheckRow } from './morning-facts';
 import { changeMorning, updateMorning, type ChangeStep } from './morning-change';
@@ -39,7 +37,7 @@ export function beginCollection(
         ? new Problem(409, 'not-here-yet', 'This child has not arrived yet.')
         : new Problem(409, 'morning-over', 'The collection of this morning has begun or is over.');
     const check = await lastDoorCheck(context, step);
-    refuseUnlessOpen(plan, check, now);
+    refuseUnlessOpen(step, check);
     const warnings = await roomWarnings(context, step, roomId);
     await updateMorning(context.db, step, version, { state: 'collecting' });
     await context.db.query(
@@ -52,7 +50,7 @@ export function beginCollection(
       { replacements: { seriesId: plan.seriesId }, transaction },
     );
     if (check?.verdict === 'cannot-tell')
-      warnings.push('The door check cannot tell how long the fast is.');
+      warnings.push(step.words.text('clinic.warning.cannot-tell'));
     return { warnings, detail: { roomId } };
   });
 }
@@ -91,7 +89,7 @@ async function lastDoorCheck(
   return check ?? null;
 }
 
-function refuseUnlessOpen(plan: MorningPlan, check: DoorCheckRow | null, now: number): void {
+function refuseUnlessOpen({ plan, now, words }: ChangeStep, check: DoorCheckRow | null): void {
   if (!check || (plan.fedAt !== null && check.checked_at.getTime() <= plan.fedAt))
     throw new Problem(409, 'door-check-first', 'Check at the door first.');
   if (check.go_on_reason !== null || plan.plan.kind === 'individual') return;
@@ -102,7 +100,7 @@ function refuseUnlessOpen(plan: MorningPlan, check: DoorCheckRow | null, now: nu
     throw new Problem(
       409,
       'not-long-enough',
-      `Not fasted long enough until ${clinicClock(readyAt, plan.zone)}. A clinician decides to go on and gives the reason.`,
+      `Not fasted long enough until ${words.clock(readyAt, plan.zone)}. A clinician decides to go on and gives the reason.`,
       { readyAt: new Date(readyAt).toISOString() },
     );
   const { longestMinutes } = plan.plan;
@@ -117,7 +115,7 @@ function refuseUnlessOpen(plan: MorningPlan, check: DoorCheckRow | null, now: nu
 /** @throws Problem 404 for a room of another site, 409 while another child is inside. */
 async function roomWarnings(
   context: Context,
-  { plan, now, transaction }: ChangeStep,
+  { plan, now, transaction, words }: ChangeStep,
   roomId: number,
 ): Promise<string[]> {
   // Locks the room, so that two children do not begin in it at once.
@@ -144,7 +142,5 @@ async function roomWarnings(
   const opensAt =
     use.last_ended_at === null ? 0 : use.last_ended_at.getTime() + use.closure_minutes * minute;
   if (opensAt <= now) return [];
-  return [
-    `This room is closed until ${clinicClock(opensAt, plan.zone)}: its air is not clean yet.`,
-  ];
+  return [words.text('clinic.warning.room-closed', { at: words.clock(opensAt, plan.zone) })];
 }

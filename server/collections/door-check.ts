@@ -70,7 +70,7 @@ export function checkAtTheDoor(
     );
     return {
       detail: { verdict },
-      warnings: input.isWell ? [] : ['The child is not well: a clinician decides.'],
+      warnings: input.isWell ? [] : [step.words.text('clinic.warning.not-well')],
     };
   });
 }

@@ -7,6 +7,8 @@ import { change, select } from '../database/connection';
 import { changedMeanwhile, invalid, Problem, type FieldError } from '../http/problem';
 import { announce } from '../live/announce';
 import { laboratoryProfileOf, type StoredProfile } from '../protocols/protocols';
+import { minutesInWords } from '../wording/clinic-measures';
+import type { ClinicWords } from '../wording/clinic-words';
 import { changeMorning, updateMorning, type ChangeStep, type StepDone } from './morning-change';
 
 export type EndCollectionInput = z.output<typeof endCollectionRequest>;
@@ -137,7 +139,7 @@ async function keepSpecimen(
   await announce(context.db, transaction, 'specimens');
   const profile = await laboratoryProfileOf(context.db, plan.laboratoryProfileId, transaction);
   return {
-    warnings: warningsFor(input, profile),
+    warnings: warningsFor(step.words, input, profile),
     detail: { outcome: 'collected', number, volumeMl: input.volumeMl },
   };
 }
@@ -191,22 +193,27 @@ async function nextSpecimenNumber(
 }
 
 /** The limits are the signed laboratory profile's. */
-function warningsFor(input: Collected, profile: StoredProfile): string[] {
+function warningsFor(words: ClinicWords, input: Collected, profile: StoredProfile): string[] {
   const warnings: string[] = [];
+  const laboratory = profile.name;
+  const warn = (key: string, params: Readonly<Record<string, string>> = {}): void => {
+    warnings.push(words.text(`clinic.warning.${key}`, { laboratory, ...params }));
+  };
   if (input.volumeMl < profile.minimumVolumeMl)
-    warnings.push(`Less than ${profile.minimumVolumeMl} mL, the least that ${profile.name} wants.`);
+    warn('little-volume', { limit: String(profile.minimumVolumeMl) });
   if (input.volumeMl > profile.maximumVolumeMl)
-    warnings.push(`More than ${profile.maximumVolumeMl} mL, the most that ${profile.name} takes.`);
+    warn('much-volume', { limit: String(profile.maximumVolumeMl) });
   if (profile.neutraliseWithinMinutes !== null && input.neutralisedAt !== null) {
     const minutes = Math.round(
       (Date.parse(input.neutralisedAt) - Date.parse(input.collectedAt)) / minute,
     );
     if (minutes > profile.neutraliseWithinMinutes)
-      warnings.push(
-        `Neutralised after ${minutes} minutes; ${profile.name} wants ${profile.neutraliseWithinMinutes} at the most.`,
-      );
+      warn('neutralised-late', {
+        minutes: minutesInWords(words, minutes),
+        limit: minutesInWords(words, profile.neutraliseWithinMinutes),
+      });
   }
-  if (input.label === null) warnings.push('Not labelled yet: label before it leaves the room.');
+  if (input.label === null) warn('not-labelled');
   return warnings;
 }
 

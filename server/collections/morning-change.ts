@@ -9,12 +9,14 @@ import { changedMeanwhile, notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
 import { morningPlansOf, type MorningPlan } from '../series/morning-plans';
 import { siteOf } from '../sites/sites';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 import { sheetOf } from './this-morning';
 
 export interface ChangeStep {
   readonly plan: MorningPlan;
   readonly now: number;
   readonly transaction: Transaction;
+  readonly words: ClinicWords;
 }
 
 /** What a step did; 'repeated' when the same request came a second time and there is nothing left to do. */
@@ -38,11 +40,12 @@ export async function changeMorning(
   step: (of: ChangeStep) => Promise<StepDone>,
 ): Promise<MorningChanged> {
   const now = context.clock.now();
+  const words = clinicWords(staff.language);
   const { plan, warnings } = await inTransaction(context.db, async (transaction) => {
     const found = await lockedPlan(context.db, transaction, staff, morningId);
     if (found.on !== dayOf(now, found.zone))
       throw new Problem(409, 'not-today', 'This morning belongs to another day.');
-    const done = await step({ plan: found, now, transaction });
+    const done = await step({ plan: found, now, transaction, words });
     if (!done.isRepeated) {
       await record(context.db, transaction, actor, {
         action: 'changed',
@@ -56,7 +59,7 @@ export async function changeMorning(
     return { plan: found, warnings: [...(done.warnings ?? [])] };
   });
   const site = await siteOf(context.db, plan.siteId);
-  const { rows } = await sheetOf(context, site, plan.on, now);
+  const { rows } = await sheetOf(context, site, plan.on, now, words);
   const row = rows.find((candidate) => candidate.morningId === morningId);
   if (!row) throw notFound('This morning');
   return { row, warnings };

@@ -5,6 +5,7 @@ import { specimenClocks } from '../../shared/domain/specimen-clocks';
 import { ageOn } from '../../shared/domain/day';
 import { toldAtOf } from '../fasting/told-rows';
 import type { StoredProfile } from '../protocols/protocols';
+import type { ClinicWords } from '../wording/clinic-words';
 import { fastSoFar, newestAnswer } from './fast-so-far';
 import type { AdultRow, MorningFacts } from './morning-facts';
 import {
@@ -23,6 +24,7 @@ const iso = (at: Instant | null): string | null =>
 const isoOf = (at: Date | null): string | null => at?.toISOString() ?? null;
 
 export interface RowSurroundings {
+  readonly words: ClinicWords;
   readonly now: Instant;
   readonly profile: StoredProfile;
   readonly rooms: ReadonlyMap<number, string>;
@@ -32,7 +34,7 @@ export interface RowSurroundings {
 
 export function morningRowOf(facts: MorningFacts, around: RowSurroundings): MorningRow {
   const { plan } = facts;
-  const { now } = around;
+  const { now, words } = around;
   const fast = fastSoFar(facts, now);
   const escort = escortOf(facts);
   const speaker = escort ?? facts.adults[0] ?? null;
@@ -42,7 +44,7 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
     version: plan.version,
     childId: plan.childId,
     fullName: plan.fullName,
-    ageInWords: ageInWords(ageOn(plan.bornOn, plan.on)),
+    ageInWords: ageInWords(words, ageOn(plan.bornOn, plan.on)),
     number: plan.number,
     ofPlanned: plan.ofPlanned,
     suns: sunsOf(facts),
@@ -56,17 +58,21 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
     needsInterpreter: speaker?.needs_interpreter === 1,
     escort: escort ? `${escort.relationship}, ${escort.full_name}` : null,
     phones: phonesOf(facts.adults, escort),
-    cautions: plan.cautions.map(cautionSays),
-    warnings: warningsOf(facts, likeNamesOf(plan.childId, plan.fullName, around.names)),
+    cautions: plan.cautions.map((caution) => cautionSays(words, caution)),
+    warnings: warningsOf(
+      words,
+      facts,
+      likeNamesOf(plan.childId, plan.fullName, around.names),
+    ),
     said: facts.said.map((row) => ({
       at: new Date(toldAtOf(row)).toISOString(),
-      source: sourceSays(row.source),
-      says: saidSays(row, plan.zone),
+      source: sourceSays(words, row.source),
+      says: saidSays(words, row, plan.zone),
     })),
     told: toldOf(facts),
     planStopAt: plan.plan.kind === 'standard' ? iso(plan.plan.stopAt) : null,
     verdict: fast.verdict,
-    verdictSays: verdictSays(facts, fast, now),
+    verdictSays: verdictSays(words, facts, fast, now),
     fastedMinutes: fast.fastedMinutes,
     readyAt: iso(fast.readyAt),
     ceiling: fast.ceiling,
@@ -75,7 +81,7 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
       ? {
           at: facts.doorCheck.checked_at.toISOString(),
           by: facts.doorCheck.checked_by,
-          says: doorSays(facts.doorCheck, plan.zone),
+          says: doorSays(words, facts.doorCheck, plan.zone),
           verdict: facts.doorCheck.verdict,
         }
       : null,

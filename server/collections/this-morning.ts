@@ -8,7 +8,8 @@ import type { Context } from '../context';
 import { select } from '../database/connection';
 import { laboratoryProfileOf, type StoredProfile } from '../protocols/protocols';
 import { roomsOf, siteOf, type Site, type SiteRoom } from '../sites/sites';
-import { clinicClock } from '../specimens/specimen-says';
+import { minutesInWords } from '../wording/clinic-measures';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 import { fastSoFar } from './fast-so-far';
 import { morningFactsOf, type MorningFacts } from './morning-facts';
 import { morningRowOf } from './morning-row';
@@ -26,7 +27,8 @@ export async function thisMorning(
   const now = context.clock.now();
   const site = await siteOf(db, staff.siteId);
   const on = wantedOn ?? dayOf(now, site.zone);
-  const sheet = await sheetOf(context, site, on, now);
+  const words = clinicWords(staff.language);
+  const sheet = await sheetOf(context, site, on, now, words);
   const otherDays = await select<{ on: Day }>(
     db,
     `SELECT DISTINCT planned_on AS \`on\` FROM mornings
@@ -43,15 +45,17 @@ export async function thisMorning(
     site: { id: site.id, name: site.name, door: site.door, zone: site.zone },
     on,
     now: new Date(now).toISOString(),
-    summary: summaryOf(sheet.rows),
-    suggestion: suggestionOf(sheet, now),
-    rooms: sheet.rooms.map((room) => roomState(room, sheet, now)),
+    summary: summaryOf(words, sheet.rows),
+    suggestion: suggestionOf(words, sheet, now),
+    rooms: sheet.rooms.map((room) => roomState(words, room, sheet, now)),
     rows: sheet.rows,
     otherDays: otherDays.map((other) => other.on),
-    protocolSays: [...new Set(sheet.facts.map(({ plan }) => `Hours: ${plan.protocol.says}`))].join(
-      ' ',
-    ),
-    laboratorySays: sheet.profile ? `Specimen clocks: ${sheet.profile.says}` : '',
+    protocolSays: [...new Set(sheet.facts.map(({ plan }) => plan.protocol.says))]
+      .map((says) => words.text('clinic.morning.hours', { says: words.sentence(says) }))
+      .join(' '),
+    laboratorySays: sheet.profile
+      ? words.text('clinic.morning.clocks', { says: words.sentence(sheet.profile.says) })
+      : '',
   };
 }
 
@@ -63,7 +67,13 @@ export interface Sheet {
   readonly profile: StoredProfile | null;
 }
 
-export async function sheetOf(context: Context, site: Site, on: Day, now: Instant): Promise<Sheet> {
+export async function sheetOf(
+  context: Context,
+  site: Site,
+  on: Day,
+  now: Instant,
+  words: ClinicWords,
+): Promise<Sheet> {
   const { db } = context;
   const [facts, rooms] = await Promise.all([morningFactsOf(db, site.id, on), roomsOf(db, site.id)]);
   const profileIds = [...new Set(facts.map(({ plan }) => plan.laboratoryProfileId))];
@@ -76,15 +86,15 @@ export async function sheetOf(context: Context, site: Site, on: Day, now: Instan
   const names = facts.map(({ plan }) => ({ childId: plan.childId, fullName: plan.fullName }));
   const rows = facts.flatMap((one) => {
     const profile = profiles.get(one.plan.laboratoryProfileId);
-    return profile ? [morningRowOf(one, { now, profile, rooms: roomNames, names })] : [];
+    return profile ? [morningRowOf(one, { words, now, profile, rooms: roomNames, names })] : [];
   });
   const [profile] = profiles.values();
   return { site, facts, rows, rooms, profile: profile ?? null };
 }
 
-function summaryOf(rows: readonly MorningRow[]): string {
+function summaryOf(words: ClinicWords, rows: readonly MorningRow[]): string {
   const count = (test: (row: MorningRow) => boolean): number => rows.filter(test).length;
-  return summarySays({
+  return summarySays(words, {
     all: rows.length,
     collected: count(({ state }) => state === 'collected'),
     notCollected: count(({ state }) => state === 'not-collected'),
@@ -106,33 +116,53 @@ export function roomFreeAt(room: SiteRoom, facts: readonly MorningFacts[]): Inst
   return lastEnd === 0 ? 0 : lastEnd + room.closureMinutes * 60_000;
 }
 
-function roomState(room: SiteRoom, sheet: Sheet, now: Instant): ThisMorning['rooms'][number] {
+function roomState(
+  words: ClinicWords,
+  room: SiteRoom,
+  sheet: Sheet,
+  now: Instant,
+): ThisMorning['rooms'][number] {
   const { id, name } = room;
   const freeAt = roomFreeAt(room, sheet.facts);
   if (freeAt === null) {
     const inside = sheet.facts.find(
       ({ collection }) => collection?.room_id === id && collection.ended_at === null,
     );
-    return { id, name, opensAt: null, says: `In use: ${inside?.plan.callMe ?? 'a child'}.` };
+    return {
+      id,
+      name,
+      opensAt: null,
+      says: words.text('clinic.room.in-use', {
+        name: inside?.plan.callMe ?? words.text('clinic.a-child'),
+      }),
+    };
   }
   if (freeAt <= now)
     return {
       id,
       name,
       opensAt: null,
-      says: `Free. Closed ${room.closureMinutes} minutes after each child.`,
+      says: words.text('clinic.room.free', {
+        minutes: minutesInWords(words, room.closureMinutes),
+      }),
     };
   const minutes = Math.ceil((freeAt - now) / 60_000);
-  const opens = clinicClock(freeAt, sheet.site.zone);
   return {
     id,
     name,
     opensAt: new Date(freeAt).toISOString(),
-    says: `Closed, ${minutes} minutes left. Opens at ${opens}.`,
+    says: words.text('clinic.room.closed', {
+      minutes: minutesInWords(words, minutes),
+      at: words.clock(freeAt, sheet.site.zone),
+    }),
   };
 }
 
-function suggestionOf(sheet: Sheet, now: Instant): ThisMorning['suggestion'] {
+function suggestionOf(
+  words: ClinicWords,
+  sheet: Sheet,
+  now: Instant,
+): ThisMorning['suggestion'] {
   const waiting = sheet.facts.filter(
     ({ plan, collection }) => plan.state === 'here' && !collection && plan.fedAt === null,
   );
@@ -163,6 +193,6 @@ function suggestionOf(sheet: Sheet, now: Instant): ThisMorning['suggestion'] {
   return {
     morningId,
     roomId: room.id,
-    says: suggestionSays({ callMe, roomName: room.name, reason: next.reason, fast, zone }),
+    says: suggestionSays(words, { callMe, roomName: room.name, reason: next.reason, fast, zone }),
   };
 }

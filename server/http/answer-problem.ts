@@ -1,5 +1,6 @@
 import { randomBytes } from 'node:crypto';
-import type { ErrorRequestHandler, RequestHandler, Response } from 'express';
+import type { ErrorRequestHandler, Request, RequestHandler, Response } from 'express';
+import { sentenceIn } from '../wording/sentences';
 import { Problem } from './problem';
 
 /** Eight letters and digits that can be read out on the telephone: no 0, O, 1, I. */
@@ -46,6 +47,21 @@ function problemOf(error: unknown): Problem | null {
   return null;
 }
 
+/** The same problem in the language of the clinic's screen; families read their own wording beside the code. */
+function inLanguageOf(req: Request, problem: Problem): Problem {
+  const { clinicLanguage } = req;
+  if (clinicLanguage === undefined || clinicLanguage === 'en') return problem;
+  const say = (sentence: string): string => sentenceIn(clinicLanguage, sentence);
+  const { detail, errors, ...more } = problem.more;
+  return new Problem(problem.status, problem.code, say(problem.title), {
+    ...more,
+    ...(detail === undefined ? {} : { detail: say(detail) }),
+    ...(errors === undefined
+      ? {}
+      : { errors: errors.map(({ path, message }) => ({ path, message: say(message) })) }),
+  });
+}
+
 function send(res: Response, problem: Problem): void {
   const { retryAfterSeconds, ...more } = problem.more;
   if (typeof retryAfterSeconds === 'number') res.set('Retry-After', String(retryAfterSeconds));
@@ -74,22 +90,18 @@ export const answerProblem: ErrorRequestHandler = (error, req, res, next) => {
   if (problem) {
     if (problem.status === 401 || problem.status === 403)
       req.log.warn({ code: problem.code }, 'refused');
-    send(res, problem);
+    send(res, inLanguageOf(req, problem));
     return;
   }
   const reference = makeReference();
   req.log.error({ err: error as Error, reference }, 'unexpected failure');
-  send(
-    res,
-    new Problem(
-      500,
-      'unexpected',
-      'Something went wrong here. Tell us the reference if you call.',
-      {
-        reference,
-      },
-    ),
+  const unexpected = new Problem(
+    500,
+    'unexpected',
+    'Something went wrong here. Tell us the reference if you call.',
+    { reference },
   );
+  send(res, inLanguageOf(req, unexpected));
 };
 
 export const noSuchRoute: RequestHandler = () => {

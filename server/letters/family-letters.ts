@@ -1,5 +1,6 @@
 import type { FamilyLetter, FamilyLetterList } from '../../shared/contracts/family-letters';
-import { familyTime } from '../../shared/languages/family-time';
+import { dayOf } from '../../shared/domain/zone';
+import { familyDay, familyTime } from '../../shared/languages/family-time';
 import { record, type Actor } from '../access-record/record';
 import type { FamilyVisitor } from '../auth/current-user';
 import type { Context } from '../context';
@@ -45,16 +46,11 @@ async function stillWaiting(
       says:
         by === null
           ? wording.text('letter.list.waiting-no-date')
-          : wording.text('letter.list.waiting', { day: dayText(by, wording) }),
+          : wording.text('letter.list.waiting', { day: familyDay(by, wording.profile).text }),
     });
   }
   return waiting;
 }
-
-const dayText = (day: string, wording: Wording): string => {
-  const time = familyTime(Date.parse(`${day}T12:00:00Z`), 'UTC', wording.profile);
-  return `${time.weekday}, ${time.date}`;
-};
 
 export async function listFamilyLetters(
   context: Context,
@@ -133,7 +129,7 @@ export async function openFamilyLetter(
       dateSays: row.body.dateSays,
       paragraphs: row.body.paragraphs.map((part) => ({ ...part })),
       openedSays: wording.text('letter.opened', {
-        dayText: `${opened.weekday}, ${opened.date}`,
+        dayText: familyDay(dayOf(now, row.zone), wording.profile).text,
         time: opened.time,
       }),
     };

@@ -1,3 +1,5 @@
+import type { z } from 'zod';
+import type { letterChoices } from '../../shared/contracts/letters';
 import type { Sequelize, Transaction } from 'sequelize';
 import { chooseLetter, type LetterChoice } from '../../shared/domain/letter-choice';
 import { dueOn, type LaboratoryProfile } from '../../shared/domain/specimen-clocks';
@@ -6,6 +8,9 @@ import { select } from '../database/connection';
 import { shownPhone } from '../messages/shown-phone';
 import { seriesFactsOf, type SeriesFacts } from '../results/series-results';
 import type { LetterFacts } from './letter-parts';
+
+/** What the clinician has chosen so far. */
+export type Choices = z.output<typeof letterChoices>;
 
 export interface Recipient {
   readonly familyMemberId: number;

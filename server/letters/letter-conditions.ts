@@ -1,8 +1,7 @@
 import type { LetterDesk } from '../../shared/contracts/letters';
 import type { Precondition } from '../../shared/domain/letter-choice';
 import type { Wording } from '../wording/render';
-import type { LetterCase } from './letter-case';
-import type { Choices } from './letter-desk';
+import type { Choices, LetterCase } from './letter-case';
 
 interface ConditionsRequest {
   readonly one: LetterCase;

@@ -1,5 +1,4 @@
-import type { z } from 'zod';
-import type { letterChoices, LetterDesk } from '../../shared/contracts/letters';
+import type { LetterDesk } from '../../shared/contracts/letters';
 import { dayOf, ageOn } from '../../shared/domain/zone';
 import { languageOf, type LanguageId } from '../../shared/languages/languages';
 import { record, type Actor } from '../access-record/record';
@@ -10,11 +9,9 @@ import { notFound } from '../http/problem';
 import { resultsOfSpecimens } from '../results/current-results';
 import { laboratorySays, specimenRows, toSpecimen } from '../specimens/specimen-rows';
 import { canSpeak, loadWording, type Wording } from '../wording/render';
-import { letterCaseOf, type LetterCase } from './letter-case';
+import { letterCaseOf, type Choices, type LetterCase } from './letter-case';
 import { letterConditions } from './letter-conditions';
 import { isLeftOut, letterParts, wordingKeysOf, type LetterFacts } from './letter-parts';
-
-export type Choices = z.output<typeof letterChoices>;
 
 /** The clinic's own language; a letter is always read in it by the one who signs. */
 export const clinicLanguage = 'en';

@@ -2,6 +2,7 @@ import type { Paragraph } from '../../shared/contracts/letters';
 import { isCritical, isPositive } from '../../shared/domain/critical';
 import { addDays } from '../../shared/domain/day';
 import type { LetterChoice, SentenceKey, SpecimenResults } from '../../shared/domain/letter-choice';
+import { dayOf } from '../../shared/domain/zone';
 import { familyDay, familyTime } from '../../shared/languages/family-time';
 import type { Wording } from '../wording/render';
 
@@ -91,9 +92,10 @@ function medicinesText(wording: Wording, facts: LetterFacts, chosen: ChosenParts
 
 function nextVisitText(wording: Wording, facts: LetterFacts, chosen: ChosenParts): string | null {
   if (chosen.nextVisitAt === null) return null;
-  const time = familyTime(Date.parse(chosen.nextVisitAt), facts.zone, wording.profile);
+  const at = Date.parse(chosen.nextVisitAt);
+  const time = familyTime(at, facts.zone, wording.profile);
   return wording.text('letter.next-visit', {
-    dayText: `${time.weekday}, ${time.date}`,
+    dayText: familyDay(dayOf(at, facts.zone), wording.profile).text,
     time: time.time,
     name: facts.callMe,
   });

@@ -12,7 +12,7 @@ import { invalid, notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
 import { tellLetterWaits } from '../messages/letter-waiting';
 import type { Wording } from '../wording/render';
-import { letterCaseOf, type LetterCase } from './letter-case';
+import { letterCaseOf, type Choices, type LetterCase } from './letter-case';
 import { letterConditions } from './letter-conditions';
 import {
   clinicLanguage,
@@ -20,7 +20,6 @@ import {
   signerName,
   unsignedRecipients,
   wordingsFor,
-  type Choices,
 } from './letter-desk';
 import { isLeftOut, letterParts, wordingKeysOf, type LetterFacts, type Tone } from './letter-parts';
 

@@ -5,6 +5,7 @@ import { childInReach, withinReach } from '../children/reach';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { outboxHealth } from '../outbox/health';
+import { clinicWords } from '../wording/clinic-words';
 import { healthSays, shownBody, stateSays } from './message-says';
 
 interface MessageRow {
@@ -40,6 +41,7 @@ export async function listMessages(
 ): Promise<MessageList> {
   const { db, clock } = context;
   const now = clock.now();
+  const words = clinicWords(staff.language);
   const child = childId === null ? null : await childInReach(db, staff, childId);
   const reach = withinReach(staff);
   const rows = await select<MessageRow>(
@@ -70,7 +72,7 @@ export async function listMessages(
       subject: row.subject,
       body: shownBody(row.kind, row.body),
       state: row.state,
-      stateSays: stateSays({
+      stateSays: stateSays(words, {
         state: row.state,
         attempts: row.attempts,
         failureSays: row.failure_says,
@@ -86,7 +88,7 @@ export async function listMessages(
       waiting,
       oldestDueAt: oldestDueAt === null ? null : new Date(oldestDueAt).toISOString(),
       isStuck,
-      says: healthSays({ waiting, oldestDueAt, isStuck, now }),
+      says: healthSays(words, { waiting, oldestDueAt, isStuck, now }),
     },
   };
 }

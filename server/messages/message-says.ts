@@ -1,37 +1,40 @@
 import type { MessageItem } from '../../shared/contracts/messages';
+import type { ClinicWords } from '../wording/clinic-words';
 
 type State = MessageItem['state'];
 
 export interface SaidState {
   readonly state: State;
   readonly attempts: number;
+  /** As the sender kept it, in English. */
   readonly failureSays: string | null;
   readonly isDue: boolean;
 }
 
 /** The state of a message in a complete sentence for staff. */
-export function stateSays({ state, attempts, failureSays, isDue }: SaidState): string {
-  const why = failureSays === null ? '' : ` ${failureSays}`;
+export function stateSays(words: ClinicWords, said: SaidState): string {
+  const { state, attempts, failureSays, isDue } = said;
+  const withFailure = (says: string): string =>
+    failureSays === null
+      ? says
+      : words.text('clinic.message.with-failure', { says, failure: words.sentence(failureSays) });
   switch (state) {
     case 'queued':
-      if (attempts > 0) return `Tried ${times(attempts)}; it will be tried again.${why}`;
-      return isDue ? 'On its way.' : 'Waits for its time.';
+      if (attempts > 0)
+        return withFailure(words.text('clinic.message.tried-again', { attempts }));
+      return words.text(isDue ? 'clinic.message.on-its-way' : 'clinic.message.waits');
     case 'sending':
-      return 'On its way.';
-    case 'sent':
-      return 'Sent; no report yet that it arrived.';
-    case 'delivered':
-      return 'Arrived.';
+      return words.text('clinic.message.on-its-way');
     case 'failed':
-      return `It did not arrive.${why}`;
+      return withFailure(words.text('clinic.message.failed'));
     case 'given-up':
-      return `Given up after ${times(attempts)}.${why}`;
+      return withFailure(words.text('clinic.message.given-up', { attempts }));
+    case 'sent':
+    case 'delivered':
     case 'withdrawn':
-      return 'Taken back before it was sent.';
+      return words.text(`clinic.message.${state}`);
   }
 }
-
-const times = (count: number): string => (count === 1 ? '1 try' : `${count} tries`);
 
 const codeKinds: ReadonlySet<string> = new Set(['code', 'sign-in-code']);
 
@@ -44,17 +47,20 @@ export function shownBody(kind: string, body: string): string {
   return body.replace(/(\/[im]\/)[A-Za-z0-9_-]{16,}/g, '$1…');
 }
 
-export function healthSays(health: {
-  readonly waiting: number;
-  readonly oldestDueAt: number | null;
-  readonly isStuck: boolean;
-  readonly now: number;
-}): string {
+export function healthSays(
+  words: ClinicWords,
+  health: {
+    readonly waiting: number;
+    readonly oldestDueAt: number | null;
+    readonly isStuck: boolean;
+    readonly now: number;
+  },
+): string {
   const { waiting, oldestDueAt, isStuck, now } = health;
-  if (waiting === 0 || oldestDueAt === null) return 'Everything that was due has gone out.';
+  if (waiting === 0 || oldestDueAt === null) return words.text('clinic.outbox.all-out');
   const minutes = Math.max(0, Math.floor((now - oldestDueAt) / 60_000));
-  const count = waiting === 1 ? '1 message is' : `${waiting} messages are`;
-  return isStuck
-    ? `Nothing goes out: ${count} due, the oldest for ${minutes} minutes. Call the families and tell the administrator.`
-    : `${count} on the way.`;
+  return words.text(isStuck ? 'clinic.outbox.stuck' : 'clinic.outbox.on-the-way', {
+    count: waiting,
+    minutes,
+  });
 }

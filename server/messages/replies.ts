@@ -4,35 +4,11 @@ import { raiseCall } from '../calls/calls';
 import type { Context } from '../context';
 import { inTransaction } from '../database/connection';
 import { announce } from '../live/announce';
+import type { IncomingText, ReplyOutcome } from './incoming-text';
 import { answerByDigit } from './reply-digit';
 import { optIn, optOut } from './reply-opt';
 import { senderOf, type ReplySender } from './reply-sender';
 import { sendAnswer } from './send-answer';
-
-/** A text that came in, as the provider reports it. */
-export interface IncomingText {
-  /** The provider's id of the text; the same text reported twice is taken once. */
-  readonly providerId: string;
-  /** E.164. */
-  readonly from: string;
-  readonly body: string;
-  /** Epoch milliseconds of the business clock. */
-  readonly receivedAt: number;
-}
-
-/** What became of a text: kept with it, and told to the clinic. */
-export type ReplyOutcome =
-  | 'answered'
-  | 'not-coming'
-  | 'too-early'
-  | 'too-late'
-  | 'no-morning'
-  | 'unclear'
-  | 'unknown-number'
-  | 'opted-out'
-  | 'opted-in'
-  | 'help'
-  | 'repeat';
 
 const longestBody = 1600;
 

@@ -13,7 +13,7 @@ import { recordFastingCheckIn, type FastingCheckTold } from '../fasting/record-c
 import { Problem } from '../http/problem';
 import { canSpeak, type WordingParams } from '../wording/render';
 import { linkExpiresAt, nightTimes } from './night-messages';
-import type { IncomingText, ReplyOutcome } from './replies';
+import type { IncomingText, ReplyOutcome } from './incoming-text';
 import type { ReplySender } from './reply-sender';
 import { sendAnswer } from './send-answer';
 

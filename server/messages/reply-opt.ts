@@ -3,7 +3,7 @@ import { raiseCall } from '../calls/calls';
 import type { Context } from '../context';
 import { change, select } from '../database/connection';
 import { planHouseholdMessages } from './plan-messages';
-import type { IncomingText, ReplyOutcome } from './replies';
+import type { IncomingText, ReplyOutcome } from './incoming-text';
 import type { ReplySender } from './reply-sender';
 import { recipientsOf } from './recipients';
 import { sendAnswer } from './send-answer';

@@ -3,7 +3,7 @@ import type { Context } from '../context';
 import { enqueue } from '../outbox/enqueue';
 import { canSpeak, loadWording, type WordingParams } from '../wording/render';
 import { noting } from './draft-message';
-import type { IncomingText } from './replies';
+import type { IncomingText } from './incoming-text';
 import type { ReplySender } from './reply-sender';
 import { siteOfHousehold, siteParams } from './tell-member';
 

@@ -4,6 +4,7 @@ import type { Day } from '../../shared/domain/day';
 import type { StaffMember } from '../auth/current-user';
 import { withinReach } from '../children/reach';
 import { select } from '../database/connection';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 import type { StoredOrderDetails } from './order-model';
 
 interface OrderRow {
@@ -73,10 +74,10 @@ export async function orderAnswers(
     { ...reach.replacements, ...wanted },
     transaction,
   );
-  return rows.map(answerFrom);
+  return rows.map((row) => answerFrom(clinicWords(staff.language), row));
 }
 
-function answerFrom(row: OrderRow): OrderAnswer {
+function answerFrom(words: ClinicWords, row: OrderRow): OrderAnswer {
   const {
     consentBy,
     consentHow,
@@ -103,7 +104,7 @@ function answerFrom(row: OrderRow): OrderAnswer {
             interpreter: consentInterpreter,
             givenAt: consentAt.toISOString(),
           },
-    stillNeeded: stillNeeded({
+    stillNeeded: stillNeeded(words, {
       isSigned: row.signedAt !== null,
       hasConsent: consentBy !== null,
     }),
@@ -111,12 +112,12 @@ function answerFrom(row: OrderRow): OrderAnswer {
 }
 
 /** What still stands between an order and its mornings. */
-export function stillNeeded(order: {
-  readonly isSigned: boolean;
-  readonly hasConsent: boolean;
-}): string[] {
+export function stillNeeded(
+  words: ClinicWords,
+  order: { readonly isSigned: boolean; readonly hasConsent: boolean },
+): string[] {
   return [
-    ...(order.isSigned ? [] : ['A clinician still has to sign this order.']),
-    ...(order.hasConsent ? [] : ['The consent of a guardian is still missing.']),
+    ...(order.isSigned ? [] : [words.text('clinic.order.needs-signature')]),
+    ...(order.hasConsent ? [] : [words.text('clinic.order.needs-consent')]),
   ];
 }

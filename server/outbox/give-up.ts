@@ -1,7 +1,7 @@
 import type { Sequelize, Transaction } from 'sequelize';
 import { change } from '../database/connection';
 import { announce } from '../live/announce';
-import type { ClaimedMessage } from './claim';
+import type { ClaimedMessage } from './claimed-message';
 
 export interface FailureSays {
   readonly code: string;

@@ -2,7 +2,7 @@ import { select } from '../database/connection';
 import { DeliveryFailure } from '../channels/delivery-failure';
 import type { SmsChannel } from '../channels/sms/sms-channel';
 import { mostAttempts } from './back-off';
-import type { ClaimedMessage } from './claim';
+import type { ClaimedMessage } from './claimed-message';
 import { keepInDoubt, settleGivenUp, settleQueuedAgain, settleSent, type Settling } from './settle';
 
 /** The provider is asked again after this while it gives no answer. */

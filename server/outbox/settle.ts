@@ -3,7 +3,7 @@ import { change, inTransaction, select } from '../database/connection';
 import { announce } from '../live/announce';
 import type { DeliveryFailure } from '../channels/delivery-failure';
 import { mostAttempts, pauseAfter } from './back-off';
-import type { ClaimedMessage } from './claim';
+import type { ClaimedMessage } from './claimed-message';
 import { giveUpOn, type GiveUp } from './give-up';
 
 export interface Settling {

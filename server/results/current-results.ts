@@ -2,6 +2,7 @@ import type { Sequelize, Transaction } from 'sequelize';
 import type { Result, TestKind } from '../../shared/contracts/specimens';
 import { isCritical, type SpecimenFindings } from '../../shared/domain/critical';
 import { select } from '../database/connection';
+import type { ClinicWords } from '../wording/clinic-words';
 import { resultSays } from './result-says';
 
 export interface ResultRow {
@@ -45,7 +46,7 @@ export function currentResultRows(
 export const needsSecondLook = (row: ResultRow): boolean =>
   row.second_look_by === null && (row.finality === 'final' || row.correction_reason !== null);
 
-export function findingsOf(rows: readonly ResultRow[]): SpecimenFindings {
+export function findingsOf(rows: readonly Pick<ResultRow, 'test' | 'value'>[]): SpecimenFindings {
   const value = (test: TestKind): string | null =>
     rows.find((row) => row.test === test)?.value ?? null;
   return {
@@ -55,12 +56,12 @@ export function findingsOf(rows: readonly ResultRow[]): SpecimenFindings {
   };
 }
 
-export function toResult(row: ResultRow): Result {
+export function toResult(words: ClinicWords, row: ResultRow): Result {
   return {
     id: row.id,
     test: row.test,
     value: row.value,
-    says: resultSays(row.test, row.value, row.finality),
+    says: resultSays(words, row.test, row.value, row.finality),
     finality: row.finality,
     reportedOn: row.reported_on,
     enteredAt: row.entered_at.toISOString(),
@@ -73,11 +74,12 @@ export function toResult(row: ResultRow): Result {
 
 export async function resultsOfSpecimens(
   db: Sequelize,
+  words: ClinicWords,
   specimenIds: readonly number[],
   transaction?: Transaction,
 ): Promise<Map<number, Result[]>> {
   const bySpecimen = new Map<number, Result[]>();
   for (const row of await currentResultRows(db, specimenIds, transaction))
-    bySpecimen.set(row.specimen_id, [...(bySpecimen.get(row.specimen_id) ?? []), toResult(row)]);
+    bySpecimen.set(row.specimen_id, [...(bySpecimen.get(row.specimen_id) ?? []), toResult(words, row)]);
   return bySpecimen;
 }

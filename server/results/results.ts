@@ -1,15 +1,14 @@
 import { QueryTypes, type Transaction } from 'sequelize';
 import type { z } from 'zod';
 import type { enterResultRequest, ResultList, Specimen } from '../../shared/contracts/specimens';
-import { isCritical, isPositive } from '../../shared/domain/critical';
 import { dayOf } from '../../shared/domain/zone';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
-import { raiseCall } from '../calls/calls';
 import type { Context } from '../context';
 import { change, inTransaction, select } from '../database/connection';
 import { changedMeanwhile, invalid, notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
+import { clinicWords } from '../wording/clinic-words';
 import {
   laboratorySays,
   specimenRows,
@@ -18,30 +17,14 @@ import {
 } from '../specimens/specimen-rows';
 import {
   currentResultRows,
-  findingsOf,
   needsSecondLook,
   resultsOfSpecimens,
   type ResultRow,
 } from './current-results';
+import { raiseDanger } from './raise-danger';
+import { seriesSays } from './result-says';
 
 export type EnteredResult = z.output<typeof enterResultRequest>;
-
-function seriesSays(specimens: readonly Specimen[]): string {
-  const results = specimens.flatMap((specimen) => specimen.results ?? []);
-  if (results.some((result) => result.isCritical))
-    return 'A person must be told before any letter.';
-  if (results.some((result) => result.needsSecondLook)) return 'A second look is needed.';
-  if (specimens.some((specimen) => specimen.isOverdue)) return 'A final answer is overdue.';
-  const open = specimens.filter(
-    (specimen) =>
-      !specimen.rejectedAt &&
-      !specimen.results?.some((one) => one.test === 'culture' && one.finality === 'final'),
-  ).length;
-  if (open === 0) return 'Every answer is final.';
-  return open === 1
-    ? 'One final answer is still expected.'
-    : `${open} final answers are still expected.`;
-}
 
 /** All open series with specimens at the laboratory, the most dangerous first. */
 export async function listResults(
@@ -50,9 +33,11 @@ export async function listResults(
   staff: StaffMember,
 ): Promise<ResultList> {
   const now = context.clock.now();
+  const words = clinicWords(staff.language);
   const rows = await specimenRows(context.db, { siteId: staff.siteId, isOpenOnly: true });
   const results = await resultsOfSpecimens(
     context.db,
+    words,
     rows.map((row) => row.id),
   );
   const bySeries = new Map<number, SpecimenRow[]>();
@@ -61,13 +46,13 @@ export async function listResults(
   const series = [...bySeries.values()].flatMap((group) => {
     const [first] = group;
     if (!first) return [];
-    const specimens = group.map((row) => toSpecimen(row, results.get(row.id) ?? [], now));
+    const specimens = group.map((row) => toSpecimen(words, row, results.get(row.id) ?? [], now));
     return {
       seriesId: first.series_id,
       childId: first.child_id,
       childName: first.full_name,
       bornOn: first.born_on,
-      says: seriesSays(specimens),
+      says: seriesSays(words, specimens),
       isCritical: specimens.some((one) => one.results?.some((result) => result.isCritical)),
       specimens,
     };
@@ -81,7 +66,7 @@ export async function listResults(
     childIds: series.map((one) => one.childId),
     at: now,
   });
-  return { series, laboratorySays: await laboratorySays(context.db, staff.siteId) };
+  return { series, laboratorySays: await laboratorySays(context.db, staff.siteId, words) };
 }
 
 function checkEntry(
@@ -126,47 +111,6 @@ const isSame = (current: ResultRow | undefined, entry: EnteredResult): boolean =
   current.finality === entry.finality &&
   current.reported_on === entry.reportedOn;
 
-/** Everything critical is told by a person: a call task at once, and for a positive the reminder to report. */
-async function raiseDanger(
-  context: Context,
-  transaction: Transaction,
-  row: SpecimenRow,
-  entry: EnteredResult,
-): Promise<void> {
-  const findings = findingsOf([{ test: entry.test, value: entry.value } as ResultRow]);
-  if (!isCritical(findings)) return;
-  const now = context.clock.now();
-  const [child] = await select<{ household_id: number }>(
-    context.db,
-    'SELECT household_id FROM children WHERE id = :id',
-    { id: row.child_id },
-    transaction,
-  );
-  const subject = `${row.id}:${entry.test}:${entry.value}`;
-  const call = {
-    householdId: child?.household_id ?? null,
-    childId: row.child_id,
-    seriesId: row.series_id,
-    isForClinician: true,
-    urgentAt: now,
-    now,
-  };
-  const positive = isPositive(findings);
-  await raiseCall(context.db, transaction, {
-    ...call,
-    reason: positive ? 'positive-result' : 'critical-result',
-    openKey: `result:${subject}`,
-    detail: `Specimen ${row.number}: ${entry.test} ${entry.value}`,
-  });
-  if (positive)
-    await raiseCall(context.db, transaction, {
-      ...call,
-      reason: 'report-to-health-department',
-      openKey: `report:${row.series_id}`,
-      detail: 'Report to the health department under local law.',
-    });
-}
-
 /**
  * Keeps a result from the laboratory's report; an earlier one of the same test stays as a version. A repeat of the same
  * entry changes nothing.
@@ -180,6 +124,7 @@ export async function enterResult(
   entry: EnteredResult,
 ): Promise<Specimen> {
   const now = context.clock.now();
+  const words = clinicWords(staff.language);
   return inTransaction(context.db, async (transaction) => {
     const [row] = await specimenRows(
       context.db,
@@ -210,8 +155,8 @@ export async function enterResult(
       await announce(context.db, transaction, 'results', row.series_id);
       await announce(context.db, transaction, 'calls');
     }
-    const results = await resultsOfSpecimens(context.db, [specimenId], transaction);
-    return toSpecimen(row, results.get(specimenId) ?? [], now);
+    const results = await resultsOfSpecimens(context.db, words, [specimenId], transaction);
+    return toSpecimen(words, row, results.get(specimenId) ?? [], now);
   });
 }
 
@@ -268,6 +213,7 @@ export async function lookAgain(
   resultId: number,
 ): Promise<Specimen> {
   const now = context.clock.now();
+  const words = clinicWords(staff.language);
   return inTransaction(context.db, async (transaction) => {
     const [found] = await select<{ specimen_id: number }>(
       context.db,
@@ -306,7 +252,7 @@ export async function lookAgain(
       });
       await announce(context.db, transaction, 'results', row.series_id);
     }
-    const results = await resultsOfSpecimens(context.db, [row.id], transaction);
-    return toSpecimen(row, results.get(row.id) ?? [], now);
+    const results = await resultsOfSpecimens(context.db, words, [row.id], transaction);
+    return toSpecimen(words, row, results.get(row.id) ?? [], now);
   });
 }

@@ -1,6 +1,7 @@
 import type { PlanSeriesRequest } from '../../shared/contracts/series';
 import { morningOn } from '../../shared/domain/series-dates';
 import { Problem, type FieldError } from '../http/problem';
+import type { ClinicWords } from '../wording/clinic-words';
 import { refusalSays } from './refusal-says';
 import { seriesChild, type Search } from './search';
 import type { PlannableOrder } from './series-orders';
@@ -10,6 +11,7 @@ import type { PlannableOrder } from './series-orders';
  * @throws Problem 409 'place-taken' or 'day-refused', with the path of each place and why
  */
 export function refuseDays(
+  words: ClinicWords,
   { request, protocol }: Search,
   days: PlanSeriesRequest['days'],
   orders: readonly PlannableOrder[],
@@ -27,19 +29,21 @@ export function refuseDays(
         (place.roomId ?? chosen.roomId) === chosen.roomId;
       const place = request.places.find(isSame);
       if (!order || !place) {
-        refused.push({ path, message: 'The clinic has no such place.' });
+        refused.push({ path, message: words.sentence('The clinic has no such place.') });
         return;
       }
       const key = `${place.arrivalTime}:${place.roomId}`;
       if (seen.has(key))
-        refused.push({ path, message: 'Two children cannot have the same place.' });
+        refused.push({ path, message: words.sentence('Two children cannot have the same place.') });
       seen.add(key);
       const child = seriesChild(order, day.on, protocol);
       const alone = { ...request, places: [place], booked: [], children: [child] };
       refused.push(
         ...morningOn(alone, day.on).refused.map((refusal) => ({
           path,
-          message: `${refusalSays(refusal, callMe)}.`,
+          message: words.text('clinic.refusal.complete', {
+            says: refusalSays(words, refusal, callMe),
+          }),
         })),
       );
       if (request.booked.some((booked) => booked.on === day.on && isSame(booked)))

@@ -2,11 +2,13 @@ import type { Sequelize, Transaction } from 'sequelize';
 import type { PlanSeriesAnswer } from '../../shared/contracts/series';
 import { withoutLinks } from '../children/without-links';
 import { select } from '../database/connection';
+import type { ClinicWords } from '../wording/clinic-words';
 
 /** What waits in the outbox for a household, in order of time. */
 export async function familyWillHear(
   db: Sequelize,
   transaction: Transaction,
+  words: ClinicWords,
   householdId: number,
   now: number,
 ): Promise<PlanSeriesAnswer['familyWillHear']> {
@@ -27,8 +29,10 @@ export async function familyWillHear(
   );
   return rows.map((row) => ({
     at: row.dueAt.toISOString(),
-    says: `${row.channel === 'sms' ? 'Text' : 'E-mail'} to ${row.name ?? 'the family'}: ${
-      row.subject ?? withoutLinks(row.body)
-    }`,
+    says: words.text('clinic.hear', {
+      channel: row.channel,
+      who: row.name ?? words.text('clinic.the-family'),
+      text: row.subject ?? withoutLinks(row.body),
+    }),
   }));
 }

@@ -12,6 +12,7 @@ import { announce } from '../live/announce';
 import { sendCalendarEntries } from '../messages/calendar-entries';
 import { planHouseholdMessages } from '../messages/plan-messages';
 import type { Site } from '../sites/sites';
+import { clinicWords } from '../wording/clinic-words';
 import { placeTakenProblem, refuseDays } from './check-days';
 import { familyWillHear } from './family-will-hear';
 import { searchFor } from './search';
@@ -31,6 +32,7 @@ export async function planSeries(
 ): Promise<PlanSeriesAnswer> {
   const { db, clock } = context;
   const now = clock.now();
+  const words = clinicWords(staff.language);
   const days = [...request.days].sort((left, right) => compareDays(left.on, right.on));
   try {
     return await inTransaction(db, async (transaction) => {
@@ -46,7 +48,7 @@ export async function planSeries(
         { siteId: first.siteId, orders, from: firstDay.on, count: days.length, now },
         transaction,
       );
-      refuseDays(search, request.days, orders);
+      refuseDays(words, search, request.days, orders);
 
       const series: PlanSeriesAnswer['series'] = [];
       const morningIds: number[] = [];
@@ -86,7 +88,7 @@ export async function planSeries(
       for (const order of orders) await announce(db, transaction, 'children', order.childId);
       return {
         series,
-        familyWillHear: await familyWillHear(db, transaction, first.householdId, now),
+        familyWillHear: await familyWillHear(db, transaction, words, first.householdId, now),
       };
     });
   } catch (error) {

@@ -14,13 +14,13 @@ import {
 } from '../../shared/domain/fasting-plan';
 import { proposeRuns } from '../../shared/domain/series-dates';
 import { dayOf, instantOf, localPartsOf } from '../../shared/domain/zone';
-import { ageInWords, listInWords } from '../../shared/languages/clinic-words';
-import { english } from '../../shared/languages/profiles/english';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { invalid } from '../http/problem';
 import { siteOf } from '../sites/sites';
+import { ageInWords } from '../wording/clinic-measures';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 import { refusalSays } from './refusal-says';
 import { searchFor } from './search';
 import { plannableOrders } from './series-orders';
@@ -33,6 +33,7 @@ export async function proposeSeries(
   { orderIds, from, morningsPlanned }: z.output<typeof proposeSeriesRequest>,
 ): Promise<SeriesProposal> {
   const now = clock.now();
+  const words = clinicWords(staff.language);
   const orders = await plannableOrders(db, staff, orderIds);
   const siteId = orders[0]?.siteId ?? staff.siteId;
   const site = await siteOf(db, siteId);
@@ -54,7 +55,7 @@ export async function proposeSeries(
         orderId,
         childId,
         fullName,
-        ageInWords: ageInWords(bornOn, start),
+        ageInWords: ageInWords(words, bornOn, start),
       })),
     days: days.map(({ on, placesLeft, refused }) => ({
       on,
@@ -62,7 +63,7 @@ export async function proposeSeries(
       placesInAll: search.request.places.length,
       refused: refused.map((refusal) => ({
         code: refusal.code,
-        says: refusalSays(refusal, callMe),
+        says: refusalSays(words, refusal, callMe),
       })),
     })),
     runs: runs.map((run) => ({
@@ -76,8 +77,8 @@ export async function proposeSeries(
         })),
       })),
     })),
-    protocolSays: search.protocol.says,
-    laboratorySays: search.profile.says,
+    protocolSays: words.sentence(search.protocol.says),
+    laboratorySays: words.sentence(search.profile.says),
   };
 }
 
@@ -89,6 +90,7 @@ export async function previewSeries(
   { orderIds, days }: Pick<PlanSeriesRequest, 'orderIds' | 'days'>,
 ): Promise<PreviewSeriesAnswer> {
   const now = clock.now();
+  const words = clinicWords(staff.language);
   const orders = await plannableOrders(db, staff, orderIds);
   const first = [...days].sort((left, right) => compareDays(left.on, right.on))[0];
   if (!first) throw invalid([{ path: 'days', message: 'Choose at least one morning.' }]);
@@ -108,9 +110,9 @@ export async function previewSeries(
   });
   const clockAndDay = (at: Instant): string => {
     const { time, weekday } = localPartsOf(at, site.zone);
-    return `${time} ${english.weekdays[weekday - 1] ?? ''}`;
+    return words.text('clinic.preview.clock-and-day', { time, weekday: words.weekday(weekday) });
   };
-  const clockTime = (at: Instant): string => localPartsOf(at, site.zone).time;
+  const clockTime = (at: Instant): string => words.clock(at, site.zone);
   return {
     firstNight: orders.map((order) => {
       const place = first.places.find(({ childId }) => childId === order.childId);
@@ -133,41 +135,34 @@ export async function previewSeries(
       const line = {
         childId: order.childId,
         fullName: order.fullName,
-        arrive: `${place.arrivalTime} ${site.door}`,
+        arrive: words.text('clinic.preview.arrive', { time: place.arrivalTime, door: site.door }),
       };
       if (plan.kind === 'individual')
         return {
           ...line,
-          nothingAfter: 'by an individual plan',
-          longestFast: 'by an individual plan',
-          individualPlanNeeded: individualPlanSays(plan.reasons),
+          nothingAfter: words.text('clinic.preview.individual'),
+          longestFast: words.text('clinic.preview.individual'),
+          individualPlanNeeded: individualPlanSays(words, plan.reasons),
         };
       const toldStopAt = wallClockForFamily(plan.stopAt, site.zone);
       const longestAt = longestEndsAt(plan.stopAt, plan);
       return {
         ...line,
         nothingAfter: clockAndDay(toldStopAt),
-        longestFast: `${clockTime(longestAt)}, if fed until ${clockTime(toldStopAt)}`,
+        longestFast: words.text('clinic.preview.longest', {
+          time: clockTime(longestAt),
+          stop: clockTime(toldStopAt),
+        }),
         individualPlanNeeded: null,
       };
     }),
   };
 }
 
-const reasonWords: Record<IndividualReason, string> = {
-  diabetes: 'diabetes',
-  'metabolic-disease': 'a metabolic disease',
-  'low-blood-sugar': 'earlier low blood sugar',
-  'severe-malnutrition': 'severe malnutrition',
-  prematurity: 'prematurity',
-  'tube-feeding': 'tube feeding',
-  'morning-medicine': 'a medicine due in the morning',
-  'under-3-months': 'an age under 3 months',
-  'age-band': 'the age',
-  'not-in-protocol': 'an age without hours in the protocol',
-  'fast-too-long': 'a fast that would be too long',
-};
-
-export const individualPlanSays = (reasons: readonly IndividualReason[]): string =>
-  `No standard hours, because of ${listInWords(reasons.map((reason) => reasonWords[reason]))}: ` +
-  'a clinician composes an individual plan and a person tells the family.';
+export const individualPlanSays = (
+  words: ClinicWords,
+  reasons: readonly IndividualReason[],
+): string =>
+  words.text('clinic.preview.needs-individual', {
+    reasons: words.list(reasons.map((reason) => words.text(`clinic.individual.${reason}`))),
+  });

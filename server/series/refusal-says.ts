@@ -1,40 +1,28 @@
-import type { Refusal, RefusalCode } from '../../shared/domain/series-dates';
-import { dayInWords } from '../../shared/languages/clinic-words';
-import { english } from '../../shared/languages/profiles/english';
+import type { Refusal } from '../../shared/domain/series-dates';
+import type { ClinicWords } from '../wording/clinic-words';
 
 /** Why a day is refused, as a complete phrase for staff. */
 export function refusalSays(
+  words: ClinicWords,
   { code, params }: Refusal,
   callMe: ReadonlyMap<number, string>,
 ): string {
-  const child = callMe.get(Number(params['childId'])) ?? 'a child';
-  const weekday = english.weekdays[Number(params['weekday']) - 1] ?? 'this day';
-  const says: Record<RefusalCode, () => string> = {
-    past: () => 'In the past',
-    'too-soon': () =>
-      `Too soon: planning needs ${params['leadDays']} ${params['leadDays'] === 1 ? 'day' : 'days'}`,
-    'not-a-clinic-day': () => `The clinic does not collect on ${weekday}s`,
-    closed: () => `Closed: ${params['reason']}`,
-    'laboratory-does-not-receive': () => `The laboratory receives nothing on ${weekday}s`,
-    'laboratory-closed': () => `Laboratory closed: ${params['reason']}`,
-    'laboratory-cut-off': () => `Too late for the laboratory: last receipt at ${params['cutOff']}`,
-    'no-places-left': () =>
-      params['left'] === 0 ? 'Full' : `Only ${params['left']} of ${params['needed']} places left`,
-    'fast-too-long': () => `Too late for ${child}: the usual wait would pass the longest fast`,
-    'run-would-break': () =>
-      `The run would break on ${dayInWords(String(params['on']))}: ${brief(String(params['because']))}`,
-  };
-  return says[code]();
+  if (code === 'no-places-left')
+    return params['left'] === 0
+      ? words.text('clinic.refusal.full')
+      : words.text('clinic.refusal.few-places', { left: params['left'], needed: params['needed'] });
+  return words.text(`clinic.refusal.${code}`, {
+    days: Number(params['leadDays']),
+    weekday: words.weekday(Number(params['weekday'])),
+    reason: String(params['reason']),
+    time: String(params['cutOff']),
+    child: callMe.get(Number(params['childId'])) ?? words.text('clinic.a-child'),
+    day: code === 'run-would-break' ? words.day(String(params['on'])) : '',
+    because: brief(words, String(params['because'])),
+  });
 }
 
-const briefWords: Readonly<Record<string, string>> = {
-  'not-a-clinic-day': 'not a clinic day',
-  closed: 'closed',
-  'laboratory-does-not-receive': 'the laboratory receives nothing',
-  'laboratory-closed': 'the laboratory is closed',
-  'laboratory-cut-off': 'too late for the laboratory',
-  'no-places-left': 'no places left',
-  'fast-too-long': 'the fast would be too long',
-};
-
-const brief = (code: string): string => briefWords[code] ?? 'not possible';
+function brief(words: ClinicWords, code: string): string {
+  const key = `clinic.refusal.brief.${code}`;
+  return words.text(words.has(key) ? key : 'clinic.refusal.brief.other');
+}

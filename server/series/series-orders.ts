@@ -6,6 +6,7 @@ import { withinReach } from '../children/reach';
 import { select } from '../database/connection';
 import { invalid, notFound, Problem } from '../http/problem';
 import { stillNeeded } from '../orders/order-answer';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 
 /** An order with what planning needs of its child. */
 export interface PlannableOrder {
@@ -73,13 +74,13 @@ export async function plannableOrders(
     if (!order) throw notFound('This order');
     return order;
   });
-  refuseUnready(orders);
+  refuseUnready(clinicWords(staff.language), orders);
   return orders.map(
     ({ isSigned: _signed, hasConsent: _consent, seriesId: _series, ...order }) => order,
   );
 }
 
-function refuseUnready(orders: readonly OrderRow[]): void {
+function refuseUnready(words: ClinicWords, orders: readonly OrderRow[]): void {
   const seriesIds = orders.flatMap(({ seriesId }) => (seriesId === null ? [] : [seriesId]));
   if (seriesIds.length > 0)
     throw new Problem(
@@ -100,9 +101,10 @@ function refuseUnready(orders: readonly OrderRow[]): void {
   if (children.size < orders.length)
     throw invalid([{ path: 'orderIds', message: 'Choose one order for each child.' }]);
   const missing = orders.flatMap((order) =>
-    stillNeeded({ isSigned: order.isSigned === 1, hasConsent: order.hasConsent === 1 }).map(
-      (sentence) => `${order.fullName}: ${sentence}`,
-    ),
+    stillNeeded(words, {
+      isSigned: order.isSigned === 1,
+      hasConsent: order.hasConsent === 1,
+    }).map((sentence) => `${order.fullName}: ${sentence}`),
   );
   if (missing.length > 0)
     throw new Problem(409, 'not-ready', 'These mornings cannot be planned yet.', {

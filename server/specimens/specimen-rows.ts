@@ -5,6 +5,7 @@ import type { LaboratoryProfile } from '../../shared/domain/specimen-clocks';
 import { laboratoryCutOffAt } from '../../shared/domain/laboratory-day';
 import { dayOf } from '../../shared/domain/zone';
 import { select } from '../database/connection';
+import type { ClinicWords } from '../wording/clinic-words';
 import { specimenSays } from './specimen-says';
 
 export interface SpecimenRow {
@@ -74,6 +75,7 @@ const iso = (date: Date | null): string | null => date?.toISOString() ?? null;
 
 /** The specimen as screens see it. `results` is null where the reader may not see any. */
 export function toSpecimen(
+  words: ClinicWords,
   row: SpecimenRow,
   results: readonly Result[] | null,
   now: number,
@@ -130,7 +132,7 @@ export function toSpecimen(
     laboratoryNumber: row.laboratory_number,
     rejectedAt: iso(row.rejected_at),
     rejectReason: row.reject_reason,
-    says: specimenSays({
+    says: specimenSays(words, {
       zone,
       now,
       neutralisedAt: row.neutralised_at?.getTime() ?? null,
@@ -154,20 +156,29 @@ export function toSpecimen(
 }
 
 /** 'Specimen clocks and final days: State laboratory, version 2, signed by Dr. Okafor on ...' */
-export async function laboratorySays(db: Sequelize, siteId: number): Promise<string> {
+export async function laboratorySays(
+  db: Sequelize,
+  siteId: number,
+  words: ClinicWords,
+): Promise<string> {
   const [row] = await select<{
     name: string;
     version: number;
     signer: string | null;
     signed_at: Date | null;
+    zone: string;
   }>(
     db,
-    `SELECT laboratory_profiles.name, laboratory_profiles.version, staff.full_name AS signer, signed_at
-     FROM laboratory_profiles LEFT JOIN staff ON staff.id = signed_by_staff_id
+    `SELECT laboratory_profiles.name, laboratory_profiles.version, staff.full_name AS signer, signed_at, sites.zone
+     FROM laboratory_profiles JOIN sites ON sites.id = laboratory_profiles.site_id LEFT JOIN staff ON staff.id = signed_by_staff_id
      WHERE site_id = :siteId AND signed_at IS NOT NULL ORDER BY version DESC LIMIT 1`,
     { siteId },
   );
-  if (!row) return 'No laboratory profile has been signed yet.';
-  const signedOn = row.signed_at?.toISOString().slice(0, 10) ?? '';
-  return `Specimen clocks and final days: ${row.name}, version ${row.version}, signed by ${row.signer ?? 'a clinician'} on ${signedOn}.`;
+  if (!row?.signed_at) return words.text('clinic.laboratory.unsigned');
+  return words.text('clinic.laboratory.signed', {
+    name: row.name,
+    version: row.version,
+    signer: row.signer ?? words.text('clinic.laboratory.a-clinician'),
+    day: words.day(dayOf(row.signed_at.getTime(), row.zone)),
+  });
 }

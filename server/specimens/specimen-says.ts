@@ -1,16 +1,5 @@
-import { DateTime } from 'luxon';
-
-/** '06:22' in the clinic's zone. */
-export const clinicClock = (at: number, zone: string): string =>
-  DateTime.fromMillis(at, { zone }).toFormat('HH:mm');
-
-/** 'Tuesday, April 6' of a calendar day. */
-export const clinicDay = (day: string): string =>
-  DateTime.fromISO(day, { zone: 'utc' }).setLocale('en-US').toFormat('cccc, LLLL d');
-
-/** 'Tue Apr 6, 06:22' in the clinic's zone. */
-export const clinicMoment = (at: number, zone: string): string =>
-  DateTime.fromMillis(at, { zone }).setLocale('en-US').toFormat('ccc LLL d, HH:mm');
+import { minutesInWords } from '../wording/clinic-measures';
+import type { ClinicWords } from '../wording/clinic-words';
 
 export interface SpecimenFacts {
   readonly zone: string;
@@ -31,28 +20,33 @@ export interface SpecimenFacts {
 
 const minutesBetween = (from: number, to: number): number => Math.round((to - from) / 60_000);
 
-function leftOrLate(by: number, now: number): string {
+function leftOrLate(words: ClinicWords, by: number, now: number): string {
   const minutes = minutesBetween(now, by);
-  return minutes >= 0 ? `${minutes} minutes left` : `${-minutes} minutes late`;
+  return words.text(minutes >= 0 ? 'clinic.specimen.left' : 'clinic.specimen.late', {
+    minutes: minutesInWords(words, Math.abs(minutes)),
+  });
 }
 
 /** What stands next for a specimen, as one complete phrase with the minutes in words. */
-export function specimenSays(facts: SpecimenFacts): string {
+export function specimenSays(words: ClinicWords, facts: SpecimenFacts): string {
   const { zone, now } = facts;
+  const until = (by: number) => ({ at: words.clock(by, zone), left: leftOrLate(words, by, now) });
   if (facts.rejectedAt !== null)
-    return `Rejected by the laboratory: ${facts.rejectReason ?? 'no reason given'}. It gives no answer.`;
+    return words.text('clinic.specimen.rejected', {
+      reason: facts.rejectReason ?? words.text('clinic.no-reason'),
+    });
   if (facts.receivedAt !== null) {
-    if (facts.isFinal) return 'Final.';
-    if (facts.finalExpectedOn === null) return 'At the laboratory.';
-    return facts.isOverdue
-      ? `Overdue: the final answer was expected by ${clinicDay(facts.finalExpectedOn)}. Ask the laboratory.`
-      : `At the laboratory. Final answer expected by ${clinicDay(facts.finalExpectedOn)}.`;
+    if (facts.isFinal) return words.text('clinic.specimen.final');
+    if (facts.finalExpectedOn === null) return words.text('clinic.specimen.at-laboratory');
+    return words.text(facts.isOverdue ? 'clinic.specimen.overdue' : 'clinic.specimen.expected', {
+      day: words.day(facts.finalExpectedOn),
+    });
   }
   if (facts.mustBeNeutralised && facts.neutralisedAt === null)
-    return `Neutralise by ${clinicClock(facts.neutraliseBy, zone)}, ${leftOrLate(facts.neutraliseBy, now)}.`;
-  if (facts.label === null) return 'Not labelled yet. No hand-over without its label.';
-  const receipt = `laboratory by ${clinicClock(facts.receiptBy, zone)}, ${leftOrLate(facts.receiptBy, now)}`;
-  return facts.handedOverAt === null
-    ? `Waiting for the courier; ${receipt}.`
-    : `On its way; ${receipt}.`;
+    return words.text('clinic.specimen.neutralise', until(facts.neutraliseBy));
+  if (facts.label === null) return words.text('clinic.specimen.not-labelled');
+  return words.text(
+    facts.handedOverAt === null ? 'clinic.specimen.waiting' : 'clinic.specimen.on-its-way',
+    until(facts.receiptBy),
+  );
 }

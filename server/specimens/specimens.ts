@@ -13,6 +13,8 @@ import { change, inTransaction, select } from '../database/connection';
 import { changedMeanwhile, invalid, notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
 import { resultsOfSpecimens } from '../results/current-results';
+import { minutesInWords } from '../wording/clinic-measures';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 import { laboratorySays, specimenRows, toSpecimen, type SpecimenRow } from './specimen-rows';
 
 export type SpecimenStep = z.output<typeof specimenStepRequest>;
@@ -27,10 +29,12 @@ export async function listSpecimens(
   staff: StaffMember,
 ): Promise<SpecimenList> {
   const now = context.clock.now();
+  const words = clinicWords(staff.language);
   const rows = await specimenRows(context.db, { siteId: staff.siteId, isOpenOnly: true });
   const results = mayReadResults(staff)
     ? await resultsOfSpecimens(
         context.db,
+        words,
         rows.map((row) => row.id),
       )
     : null;
@@ -42,9 +46,9 @@ export async function listSpecimens(
   });
   return {
     specimens: rows.map((row) =>
-      toSpecimen(row, results === null ? null : (results.get(row.id) ?? []), now),
+      toSpecimen(words, row, results === null ? null : (results.get(row.id) ?? []), now),
     ),
-    laboratorySays: await laboratorySays(context.db, staff.siteId),
+    laboratorySays: await laboratorySays(context.db, staff.siteId, words),
   };
 }
 
@@ -123,6 +127,7 @@ export async function stepSpecimen(
   step: SpecimenStep,
 ): Promise<SpecimenChanged> {
   const now = context.clock.now();
+  const words = clinicWords(staff.language);
   return inTransaction(context.db, async (transaction) => {
     const where = { siteId: staff.siteId, id };
     const [row] = await specimenRows(context.db, where, transaction);
@@ -160,26 +165,31 @@ export async function stepSpecimen(
     const [after] = await specimenRows(context.db, where, transaction);
     if (!after) throw notFound('This specimen');
     const results = mayReadResults(staff)
-      ? ((await resultsOfSpecimens(context.db, [id], transaction)).get(id) ?? [])
+      ? ((await resultsOfSpecimens(context.db, words, [id], transaction)).get(id) ?? [])
       : null;
-    return { specimen: toSpecimen(after, results, now), warnings: warningsOf(after) };
+    return { specimen: toSpecimen(words, after, results, now), warnings: warningsOf(words, after) };
   });
 }
 
 /** Gentle warnings against the laboratory's profile; nothing is blocked by them. */
-function warningsOf(row: SpecimenRow): string[] {
+function warningsOf(words: ClinicWords, row: SpecimenRow): string[] {
   const { profile } = row;
   const collected = row.collected_at.getTime();
   const minutes = (at: Date): number => Math.round((at.getTime() - collected) / 60_000);
   const warnings: string[] = [];
+  const warn = (key: string, taken: number, most: number): void => {
+    warnings.push(
+      words.text(`clinic.warning.${key}`, {
+        minutes: minutesInWords(words, taken),
+        limit: minutesInWords(words, most),
+        laboratory: profile.name,
+      }),
+    );
+  };
   const limit = profile.neutraliseWithinMinutes;
   if (row.neutralised_at && limit !== null && minutes(row.neutralised_at) > limit)
-    warnings.push(
-      `Neutralised after ${minutes(row.neutralised_at)} minutes; ${profile.name} asks for ${limit}.`,
-    );
+    warn('neutralised-late', minutes(row.neutralised_at), limit);
   if (row.received_at && minutes(row.received_at) > profile.receiptWithinMinutes)
-    warnings.push(
-      `Received after ${minutes(row.received_at)} minutes; ${profile.name} asks for ${profile.receiptWithinMinutes}.`,
-    );
+    warn('received-late', minutes(row.received_at), profile.receiptWithinMinutes);
   return warnings;
 }

@@ -1,9 +1,8 @@
 import type { Sequelize } from 'sequelize';
 import { addDays, instantOf } from '../../shared/domain/zone';
 import { familyTime } from '../../shared/languages/family-time';
-import type { LanguageId } from '../../shared/languages/languages';
-import { profileOf } from '../../shared/languages/profiles';
 import { select } from '../database/connection';
+import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 
 /** One planned day of a site, as far as the moments of its night and morning need it. */
 export interface PlannedDay {
@@ -24,17 +23,6 @@ export interface Moment {
 
 type MomentName = 'evening' | 'question' | 'call-list' | 'first-arrival' | 'last-arrival';
 
-/** Words of the rehearsal screen by language of the clinic's application; a demo tool, so no wording to sign. */
-const words: Readonly<Partial<Record<LanguageId, Readonly<Record<MomentName, string>>>>> = {
-  en: {
-    evening: 'Evening text',
-    question: 'Morning question',
-    'call-list': 'Unanswered families on the call list',
-    'first-arrival': 'First arrival',
-    'last-arrival': 'Last arrival',
-  },
-};
-
 const mostMoments = 12;
 const minuteMs = 60_000;
 
@@ -42,19 +30,18 @@ const minuteMs = 60_000;
 export function momentsOf(
   days: readonly PlannedDay[],
   now: number,
-  language: LanguageId = 'en',
+  words: ClinicWords = clinicWords('en'),
 ): Moment[] {
-  const says = words[language];
-  if (!says) return [];
-  const moments = days.flatMap((day) =>
-    momentsOfDay(day).map(([name, at]) => ({ says: says[name], at, zone: day.zone })),
-  );
-  return moments
+  return days
+    .flatMap((day) => momentsOfDay(day).map(([name, at]) => ({ name, at, zone: day.zone })))
     .filter(({ at }) => at > now)
     .sort((left, right) => left.at - right.at)
     .slice(0, mostMoments)
-    .map(({ says: name, at, zone }) => ({
-      says: `${name}: ${familyTime(at, zone, profileOf(language)).text}`,
+    .map(({ name, at, zone }) => ({
+      says: words.text('clinic.moment.at', {
+        moment: words.text(`clinic.moment.${name}`),
+        time: familyTime(at, zone, words.profile).text,
+      }),
       at: new Date(at).toISOString(),
     }));
 }

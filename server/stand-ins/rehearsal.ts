@@ -1,9 +1,11 @@
 import type { RehearsalReplyRequest, RehearsalState } from '../../shared/contracts/rehearsal';
 import type { Actor } from '../access-record/record';
 import { recordViewOnce } from '../access-record/record-view-once';
+import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { notFound, Problem } from '../http/problem';
+import { clinicWords } from '../wording/clinic-words';
 import { momentsOf, plannedDays } from './moments';
 import type { StandInClient, StandInState } from './stand-in-client';
 
@@ -25,6 +27,7 @@ interface Tie {
 export async function rehearsalState(
   context: Context,
   actor: Actor,
+  staff: StaffMember,
   standIns: StandInClient,
 ): Promise<RehearsalState> {
   const { db, clock } = context;
@@ -49,7 +52,7 @@ export async function rehearsalState(
   return {
     now: new Date(now).toISOString(),
     offsetMinutes: Math.round((now - Date.now()) / 60_000),
-    moments: momentsOf(days, now),
+    moments: momentsOf(days, now, clinicWords(staff.language)),
     phones: phonesOf(people, ties, held),
     mailboxes: [
       ...mailboxesOf(people, held),

@@ -48,8 +48,8 @@ function language(
 /** In the order in which they are offered. */
 export const languages: readonly Language[] = [
   language('en', 'en-US', 'English', 'English', { isBuilt: true }),
-  language('es', 'es-US', 'Español', 'Spanish'),
-  language('ar', 'ar', 'العربية', 'Arabic', { dir: 'rtl' }),
+  language('es', 'es-US', 'Español', 'Spanish', { isBuilt: true }),
+  language('ar', 'ar', 'العربية', 'Arabic', { dir: 'rtl', isBuilt: true }),
   language('am', 'am', 'አማርኛ', 'Amharic'),
   language('my', 'my', 'မြန်မာ', 'Burmese'),
   language('zh-Hans', 'zh-Hans', '简体中文', 'Chinese, simplified'),

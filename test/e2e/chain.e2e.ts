@@ -34,6 +34,7 @@ const grandmother: Adult = {
   isHelper: true,
 };
 const motherPhone = '+13125550191';
+const grandmotherPhone = '+13125550192';
 const motherMail = 'elif.aksoy@example.org';
 
 // Families of the demo clinic; their children come on its next morning.
@@ -147,6 +148,10 @@ test('a child goes through the whole chain, from the order to the opened letter'
     expect(same?.title).toBe(mailed?.title);
   });
 
+  /** Whether the question of the morning has reached a phone, after so many texts. */
+  const isAsked = async (to: string, after = 0): Promise<boolean> =>
+    (await standIns.texts(to)).slice(after).some(({ body }) => /1 = nothing/.test(body));
+
   const board = new ThisMorningScreen(await rosa.context().newPage());
   await board.open();
   const rehearsal = new RehearsalScreen(rosa);
@@ -155,8 +160,7 @@ test('a child goes through the whole chain, from the order to the opened letter'
   await test.step('the demo families answer by text, the open sheet and the calls follow', async () => {
     await rehearsal.toMoment(/^Evening text/);
     await rehearsal.toMoment(/^Morning question/);
-    while (!(await standIns.texts(salma.phone)).some(({ body }) => /1 = nothing/.test(body)))
-      await rehearsal.quarterOn();
+    await rehearsal.onUntil(() => isAsked(salma.phone));
     await expect(board.said(salma.child)).toContainText('Nothing yet');
     await rehearsal.answer(salma.name, '1');
     await expect(board.said(salma.child)).toContainText(/nothing since/i);
@@ -164,33 +168,37 @@ test('a child goes through the whole chain, from the order to the opened letter'
     await rehearsal.answer(parwin.name, '2');
     await expect(board.said(parwin.child)).not.toContainText('Nothing yet');
     await toScreen(okafor, 'Calls');
-    const call = okafor.locator('li.call').filter({ hasText: parwin.child });
+    const call = okafor.locator('#list li.call').filter({ hasText: parwin.child });
     await expect(call).toContainText(`${parwin.name} was asked to call us before leaving.`);
   });
 
   const wholeMorning = async (morning: PlannedMorning, number: number): Promise<void> => {
+    // Whoever brings the child is asked in the morning; the mother hears the plan every evening.
+    const isGrandmother = number === 2;
+    const [asked, bringer] = isGrandmother
+      ? [grandmotherPhone, grandmother]
+      : [motherPhone, mother];
     const before = (await standIns.texts(motherPhone)).length;
+    const askedBefore = (await standIns.texts(asked)).length;
     await house.moveTo(instantOf({ on: addDays(morning.on, -1), time: '12:00', zone }));
     await rehearsal.toMoment(/^Evening text/);
     const evening = await standIns.text(motherPhone, /no food, no drink, no water/, before);
     expectNeutral(evening.body, secrets);
     expect(evening.body).toContain(child.familyLabel);
     await rehearsal.toMoment(/^Morning question/);
-    const isAsked = async (): Promise<boolean> =>
-      (await standIns.texts(motherPhone))
-        .slice(before)
-        .some(({ body }) => /1 = nothing/.test(body));
-    while (!(await isAsked())) await rehearsal.quarterOn();
-    const question = await standIns.text(motherPhone, /1 = nothing/, before);
+    await rehearsal.onUntil(() => isAsked(asked, askedBefore));
+    const question = await standIns.text(asked, /1 = nothing/, askedBefore);
     expectNeutral(question.body, secrets);
 
     await expect(board.said(child.fullName)).toContainText('Nothing yet');
-    await phone.page.goto(linkIn(question.body, 'm'));
-    await phone.answerNothing();
-    await expect(phone.heading(/^Come\. Be at Door B/)).toBeVisible();
+    const link = linkIn(question.body, 'm');
+    const answering = isGrandmother ? new FamilyPhone(await people.phone()) : phone;
+    if (isGrandmother) await answering.arrive(link, child.bornOn);
+    else await answering.page.goto(link);
+    await answering.answerNothing();
+    await expect(answering.heading(/^Come\. Be at Door B/)).toBeVisible();
     await expect(board.said(child.fullName)).toContainText(/nothing since/i);
     await house.moveTo(instantOf({ on: morning.on, time: morning.arrivalTime, zone }));
-    const [, bringer = mother] = number === 2 ? [mother, grandmother] : [];
     await board.run(child.fullName, { label: `AS-91${number}`, broughtBy: bringer.fullName });
     await board.expectNeverReloaded();
 
@@ -204,24 +212,21 @@ test('a child goes through the whole chain, from the order to the opened letter'
     await house.moveDays(8);
     await toScreen(rosa, 'Results');
     const results = new ResultsScreen(rosa, child.fullName);
-    const culture = { test: 'Culture' } as const;
-    const numbers = [1, 2, 3];
-    const early: readonly Entry[] = [
-      { specimen: 1, test: 'Smear', answer: 'No acid-fast bacilli seen', finality: 'final' },
-      { specimen: 1, test: 'Amplification', answer: 'Not detected', finality: 'final' },
-      ...numbers.map((specimen): Entry => ({
-        ...culture,
-        specimen,
+    const enter = async (specimen: number, answer: Omit<Entry, 'specimen' | 'reportedOn'>) =>
+      results.enter({ ...answer, specimen, reportedOn: await house.today() });
+    await enter(1, { test: 'Smear', answer: 'No acid-fast bacilli seen', finality: 'final' });
+    await enter(1, { test: 'Amplification', answer: 'Not detected', finality: 'final' });
+    for (const specimen of [1, 2, 3])
+      await enter(specimen, {
+        test: 'Culture',
         answer: 'No growth so far',
         finality: 'preliminary',
-      })),
-    ];
-    for (const entry of early) await results.enter(entry);
+      });
     await house.moveDays(36);
-    for (const specimen of numbers)
-      await results.enter({
-        ...culture,
-        specimen,
+    await house.awake();
+    for (const specimen of [1, 2, 3])
+      await enter(specimen, {
+        test: 'Culture',
         answer: 'No growth, culture ended',
         finality: 'final',
       });

@@ -16,13 +16,16 @@ export default defineConfig({
   globalSetup: join(__dirname, '..', 'support', 'e2e-house.mjs'),
   forbidOnly: true,
   retries: 0,
-  workers: 2,
+  // One house with one clock that moves forward only: one test after the other.
+  workers: 1,
   timeout: 90_000,
   expect: { timeout: 10_000 },
   reporter: 'list',
   use: {
     // Known only when the house stands; the workers read this file again after that.
     baseURL: process.env['THREEDAWN_ORIGIN'],
+    actionTimeout: 15_000,
+    navigationTimeout: 20_000,
     locale: 'en-US',
     timezoneId: 'America/Chicago',
     screenshot: 'only-on-failure',

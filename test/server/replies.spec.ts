@@ -1,6 +1,7 @@
 import { inTransaction, select } from '../../server/database/connection';
 import { planHouseholdMessages } from '../../server/messages/plan-messages';
-import { takeReply, type ReplyOutcome } from '../../server/messages/replies';
+import type { ReplyOutcome } from '../../server/messages/incoming-text';
+import { takeReply } from '../../server/messages/replies';
 import { addNight, localInstant, nightOn, signWords, type NightFamily } from '../support/night';
 import { startTestServer, type TestServer } from '../support/server';
 

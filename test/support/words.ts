@@ -62,8 +62,16 @@ const samples: Readonly<Record<string, string>> = {
   url: 'https://visits.example.org/m/AbCdEfGhIjKlMnOpQrStUv',
 };
 
+const timesKnown = new Map<LanguageId, Record<string, string>>();
+
 /** Wednesday, 9 December 2026, 7:00 in the morning, as the language tells it. */
 function sampleTimes(language: LanguageId): Record<string, string> {
+  const known = timesKnown.get(language) ?? tellSampleTimes(language);
+  timesKnown.set(language, known);
+  return known;
+}
+
+function tellSampleTimes(language: LanguageId): Record<string, string> {
   const told = (at: string) => familyTime(Date.parse(at), 'UTC', profileOf(language));
   const arrival = told('2026-12-09T07:00:00Z');
   const day = `${arrival.weekday}, ${arrival.date}`;

@@ -8,6 +8,8 @@ export interface DemoAdult {
   readonly relationship: string;
   readonly phone: string | null;
   readonly email: string | null;
+  /** English when it is left out. */
+  readonly reads?: string;
   readonly readsHow: 'well' | 'little' | 'no';
   readonly speaks: string;
   readonly needsInterpreter: boolean;
@@ -98,12 +100,13 @@ export const demoFamilies: readonly DemoFamily[] = [
     adults: [
       mother('Salma Haddad', '+13125550121', {
         email: 'salma.haddad@example.org',
+        reads: 'ar',
         speaks: 'Arabic',
         mail: true,
       }),
     ],
     children: [
-      child('Idris Haddad', 'Idris', 'Little one', 5, {
+      child('Idris Haddad', 'Idris', 'الصغير', 5, {
         recordNumber: 'A-1045',
         feeding: 'formula',
         weightKg: 6.6,
@@ -163,6 +166,7 @@ export const demoFamilies: readonly DemoFamily[] = [
     adults: [
       mother('Inés Duarte', '+13125550151', {
         email: 'ines.duarte@example.org',
+        reads: 'es',
         speaks: 'Spanish',
         mail: true,
       }),
@@ -172,6 +176,7 @@ export const demoFamilies: readonly DemoFamily[] = [
         relationship: 'aunt',
         phone: '+13125550152',
         email: null,
+        reads: 'es',
         readsHow: 'well',
         speaks: 'Spanish',
         needsInterpreter: false,
@@ -180,7 +185,7 @@ export const demoFamilies: readonly DemoFamily[] = [
       },
     ],
     children: [
-      child('Camila Duarte', 'Camila', 'Our girl', 17, {
+      child('Camila Duarte', 'Camila', 'La niña', 17, {
         recordNumber: 'A-1048',
         feeding: 'family-food',
         weightKg: 9.9,

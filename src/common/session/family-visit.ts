@@ -52,7 +52,16 @@ export class FamilyVisit {
     this.current.set(session);
     this.clock.learn(session.now);
     await this.phone.keep(SESSION, session);
+    this.turnTo(session.language);
     return session;
+  }
+
+  /** The pages in the person's own language; another language is another application and needs a full load. */
+  private turnTo(language: string): void {
+    const here = document.documentElement.lang;
+    const { pathname, search } = location;
+    if (language !== here && pathname.startsWith(`/${here}/`))
+      location.replace(`/${language}${pathname.slice(here.length + 1)}${search}`);
   }
 
   meetClinic(clinic: FamilySession['clinic']): void {

@@ -19,6 +19,14 @@ export class RehearsalScreen {
     await this.move(this.page.getByRole('button', { name: '15 minutes on' }));
   }
 
+  /** Goes on in quarters of an hour until something has happened. */
+  async onUntil(hasHappened: () => Promise<boolean>): Promise<void> {
+    for (let quarters = 0; !(await hasHappened()); quarters += 1) {
+      expect(quarters, 'quarters of an hour gone by').toBeLessThan(20);
+      await this.quarterOn();
+    }
+  }
+
   /** A text from a family's phone. */
   async answer(person: string, digit: '1' | '2' | '3'): Promise<void> {
     await this.choose(person);

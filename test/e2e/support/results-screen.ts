@@ -6,6 +6,7 @@ export interface Entry {
   readonly test: 'Smear' | 'Amplification' | 'Culture';
   readonly answer: string;
   readonly finality: 'preliminary' | 'final';
+  readonly reportedOn: string;
 }
 
 /** Results of one child: entered by one person, confirmed by another. */
@@ -27,15 +28,16 @@ export class ResultsScreen {
       .filter({ has: this.page.getByRole('heading', { name: `Specimen ${number}`, exact: true }) });
   }
 
-  async enter({ specimen, test, answer, finality }: Entry): Promise<void> {
+  async enter({ specimen, test, answer, finality, reportedOn }: Entry): Promise<void> {
     const part = this.specimen(specimen);
     await part.getByRole('button', { name: 'Enter a result' }).click();
     await part.getByLabel('Test').selectOption({ label: test });
     await part.getByLabel('Answer on the report').selectOption({ label: answer });
     await part.getByRole('radio', { name: finality }).check();
+    await part.getByLabel('Date of the report').fill(reportedOn);
     await part.getByRole('button', { name: 'Keep this result' }).click();
     await expect(part.getByRole('button', { name: 'Enter a result' })).toBeVisible();
-    await expect(part.locator('.answers')).toContainText(answer, { ignoreCase: true });
+    await expect(part.locator('.answers')).toContainText(new RegExp(`${test}: [^:]*, ${finality}`));
   }
 
   /** Confirms all that waits for this person's second look. @returns how many. */

@@ -1,4 +1,10 @@
-import { test as base, expect, type BrowserContext, type Page } from '@playwright/test';
+import {
+  test as base,
+  expect,
+  type BrowserContext,
+  type BrowserContextOptions,
+  type Page,
+} from '@playwright/test';
 import { CleanConsole } from './clean-console';
 import { House, password, signInOf, type Who } from './house';
 
@@ -9,7 +15,7 @@ export interface People {
   /** A signed-in member of staff at a desk. */
   readonly staff: (who: Who) => Promise<Page>;
   /** A family's phone: narrow, touch, nothing known yet. */
-  readonly phone: () => Promise<Page>;
+  readonly phone: (options?: BrowserContextOptions) => Promise<Page>;
   /** A visitor at a desk who is not signed in. */
   readonly visitor: () => Promise<Page>;
 }
@@ -41,7 +47,7 @@ export const test = base.extend<Fixtures>({
   },
   people: async ({ browser, clean }, use) => {
     const contexts: BrowserContext[] = [];
-    const open = async (options: Parameters<typeof browser.newContext>[0]): Promise<Page> => {
+    const open = async (options: BrowserContextOptions): Promise<Page> => {
       const context = await browser.newContext(options);
       clean.watch(context);
       contexts.push(context);
@@ -53,7 +59,7 @@ export const test = base.extend<Fixtures>({
         await signIn(page, who);
         return page;
       },
-      phone: () => open(phone),
+      phone: (options) => open({ ...phone, ...options }),
       visitor: () => open(desk),
     });
     for (const context of contexts) await context.close();

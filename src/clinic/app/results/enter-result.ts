@@ -15,8 +15,10 @@ import {
   type Specimen,
   type TestKind,
 } from '../../../../shared/contracts/specimens';
+import { dayOf } from '../../../../shared/domain/zone';
 import type { ClinicFailure } from '../../../common/api/clinic/clinic-http';
 import { ClinicClock } from '../../../common/session/clinic-clock';
+import { ClinicUser } from '../../../common/session/clinic-user';
 import { answersOf, testWords } from './result-words';
 
 /** One answer from the laboratory's report: the schema decides, each fault stands beside its field. */
@@ -43,7 +45,8 @@ export class EnterResult {
   protected readonly form = inject(NonNullableFormBuilder).group({
     value: '',
     finality: '',
-    reportedOn: this.clock.instant().slice(0, 10),
+    // The clinic's day: in the evening the day of UTC is tomorrow's already.
+    reportedOn: dayOf(this.clock.now(), inject(ClinicUser).zone()),
     correctionReason: '',
   });
   protected readonly isCorrection = computed(() =>

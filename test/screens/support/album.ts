@@ -1,0 +1,137 @@
+import { mkdirSync, writeFileSync } from 'node:fs';
+import { join } from 'node:path';
+import type { Browser, BrowserContext, Page } from '@playwright/test';
+import { expect } from '../../e2e/support/walk';
+import { contactSheet, type Picture } from './contact-sheet';
+import { viewsOf, type View } from './views';
+
+const folder = join(__dirname, '..', '..', '..', 'test-results', 'screens');
+
+export interface Screen {
+  readonly name: string;
+  /** From the origin. */
+  readonly address: (language: string) => string;
+  /** Opens a form or takes a step after the page stands; must work in every language. */
+  readonly prepare?: (page: Page) => Promise<void>;
+  /** Set when the state is one of waiting, so that nothing is waited for. */
+  readonly isWaiting?: boolean;
+  readonly views?: (views: readonly View[]) => readonly View[];
+  readonly media?: 'print';
+}
+
+interface Pages {
+  readonly hand: Page;
+  readonly desk: Page;
+}
+
+export interface AlbumOptions {
+  readonly group: string;
+  readonly languages: readonly string[];
+  /** Sign in. */
+  readonly cookies?: Cookies | undefined;
+  /** Makes the house answer in a language, where that does not follow from the address. */
+  readonly speak?: (language: string) => Promise<void>;
+}
+
+let counted = 0;
+
+/** One album a group of screens: pictures, and a contact sheet of them at the end. */
+export class Album {
+  private readonly pictures: Picture[] = [];
+  private readonly overflows: string[] = [];
+
+  private constructor(
+    private readonly group: string,
+    private readonly pages: Pages,
+    private readonly languages: readonly string[],
+    private readonly speak: (language: string) => Promise<void>,
+  ) {}
+
+  /** Fills one album; what was taken before a failure is on its sheet too. */
+  static async fill(
+    browser: Browser,
+    options: AlbumOptions,
+    work: (album: Album) => Promise<void>,
+  ): Promise<void> {
+    const album = await Album.open(browser, options);
+    try {
+      await work(album);
+    } finally {
+      await album.close();
+    }
+    expect(album.overflows, 'pages that are wider than their window').toEqual([]);
+  }
+
+  private static async open(
+    browser: Browser,
+    { group, languages, cookies, speak = () => Promise.resolve() }: AlbumOptions,
+  ): Promise<Album> {
+    const hand = await browser.newContext({ hasTouch: true, isMobile: true });
+    const desk = await browser.newContext();
+    for (const context of [hand, desk]) {
+      if (cookies) await context.addCookies(cookies);
+      await keepWorkerOut(context);
+    }
+    const pages = { hand: await hand.newPage(), desk: await desk.newPage() };
+    mkdirSync(join(folder, group), { recursive: true });
+    return new Album(group, pages, languages, speak);
+  }
+
+  async shoot(screen: Screen): Promise<void> {
+    const all = viewsOf(counted, this.languages);
+    counted += 1;
+    for (const view of screen.views?.(all) ?? all) await this.take(screen, view);
+  }
+
+  both(work: (context: BrowserContext) => Promise<unknown>): Promise<unknown> {
+    return Promise.all([this.pages.hand, this.pages.desk].map((page) => work(page.context())));
+  }
+
+  /** Writes the contact sheet. */
+  private async close(): Promise<void> {
+    const { desk } = this.pages;
+    await this.both((context) => context.unrouteAll({ behavior: 'ignoreErrors' }));
+    const file = join(folder, `${this.group}.html`);
+    writeFileSync(file, contactSheet(this.group, this.pictures));
+    await desk.setViewportSize({ width: 1920, height: 1080 });
+    await desk.emulateMedia({ colorScheme: 'light', media: 'screen' });
+    await desk.goto(`file://${file}`);
+    await desk.screenshot({ path: join(folder, `${this.group}.png`), fullPage: true });
+    await this.both((context) => context.close());
+  }
+
+  private async take(screen: Screen, view: View): Promise<void> {
+    const page = view.width < 1000 ? this.pages.hand : this.pages.desk;
+    const { width, height, language, scheme } = view;
+    await page.setViewportSize({ width, height });
+    await page.emulateMedia({ colorScheme: scheme, media: 'screen', reducedMotion: 'reduce' });
+    await this.speak(language);
+    await page.goto(screen.address(language), { waitUntil: 'commit' });
+    await page.locator('h1, .skeleton, .waiting').first().waitFor();
+    if (!screen.isWaiting) await settled(page);
+    await screen.prepare?.(page);
+    if (!screen.isWaiting) await settled(page);
+    if (screen.media) await page.emulateMedia({ media: screen.media, colorScheme: 'light' });
+    const name = `${screen.name}.${width}.${language}.${scheme}`;
+    const wide = await page.evaluate(() => document.documentElement.scrollWidth);
+    if (wide > width && !screen.media) this.overflows.push(`${name}: ${wide}`);
+    const path = join(this.group, `${name}.png`);
+    await page.screenshot({ path: join(folder, path), fullPage: true, animations: 'disabled' });
+    this.pictures.push({ screen: screen.name, view, path });
+  }
+}
+
+export type Cookies = Awaited<ReturnType<BrowserContext['cookies']>>;
+
+// Every page is to come fresh from the house, in the language that was asked for.
+function keepWorkerOut(context: BrowserContext): Promise<unknown> {
+  return context.addInitScript(() => {
+    Object.defineProperty(navigator, 'serviceWorker', { value: undefined, configurable: true });
+  });
+}
+
+async function settled(page: Page): Promise<void> {
+  await expect(page.locator('.skeleton, td-sheet-states .waiting')).toHaveCount(0);
+  await page.locator('h1').first().waitFor();
+  await page.evaluate(() => document.fonts.ready.then(() => undefined));
+}
