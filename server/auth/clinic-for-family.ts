@@ -1,3 +1,4 @@
+import type { Transaction } from 'sequelize';
 import type { FamilySession } from '../../shared/contracts/family-session';
 import { minutesOfTime } from '../../shared/domain/day';
 import { instantOf, localPartsOf } from '../../shared/domain/zone';
@@ -12,8 +13,12 @@ import type { Wording } from '../wording/render';
 export type ClinicForFamily = FamilySession['clinic'];
 
 /** The words of the family's language; null when nothing can be said in it here yet. */
-export async function wordingFor(context: Context, language: string): Promise<Wording | null> {
-  return canSpeak(language) ? loadWording(context.db, language) : null;
+export async function wordingFor(
+  context: Context,
+  language: string,
+  transaction?: Transaction,
+): Promise<Wording | null> {
+  return canSpeak(language) ? loadWording(context.db, language, transaction) : null;
 }
 
 /** How a family reaches the clinic now, without a word about a child. `siteId` null: the installation's first site. */

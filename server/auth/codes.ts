@@ -110,7 +110,7 @@ async function queueCode(
   address: string,
 ): Promise<void> {
   const { db } = context;
-  const wording = await wordingFor(context, member.language);
+  const wording = await wordingFor(context, member.language, transaction);
   const bodyKey = channel === 'sms' ? 'message.code.text' : 'message.code.mail';
   const keys = channel === 'sms' ? [bodyKey] : [bodyKey, 'message.code.subject'];
   if (!wording?.isSignedOff(keys)) {

@@ -19,8 +19,13 @@ const clocks = (context: Context) => ({
 });
 
 /** The link's own phone: remembered for the same family member, so that nobody else's link opens on it. */
-async function isOwnPhone(context: Context, req: Request, link: FamilyLink): Promise<boolean> {
-  const phone = await rememberedPhoneOf(context.db, req);
+async function isOwnPhone(
+  context: Context,
+  req: Request,
+  link: FamilyLink,
+  transaction?: Transaction,
+): Promise<boolean> {
+  const phone = await rememberedPhoneOf(context.db, req, transaction);
   return link.kind === 'household' && phone?.familyMemberId === link.familyMemberId;
 }
 
@@ -101,7 +106,7 @@ async function tryLink(
   );
   const childIds = children.map(({ id }) => id);
   const isRight =
-    (await isOwnPhone(context, req, link)) ||
+    (await isOwnPhone(context, req, link, transaction)) ||
     children.some(({ born_on }) => bornOn !== null && born_on === bornOn);
   if (isRight) {
     await useLink(context, transaction, link);

@@ -1,6 +1,6 @@
 import { randomBytes } from 'node:crypto';
 import type { CookieOptions, Request, Response } from 'express';
-import type { Sequelize } from 'sequelize';
+import type { Sequelize, Transaction } from 'sequelize';
 import type { Settings } from '../config/settings';
 import { select } from '../database/connection';
 import { familyCookie } from './sessions';
@@ -36,6 +36,7 @@ function tokenOf(req: Request): string | null {
 export async function rememberedPhoneOf(
   db: Sequelize,
   req: Request,
+  transaction?: Transaction,
 ): Promise<RememberedPhone | null> {
   const token = tokenOf(req);
   if (token === null) return null;
@@ -45,6 +46,7 @@ export async function rememberedPhoneOf(
     `SELECT family_member_id FROM remembered_phones
      WHERE token_hash = :tokenHash AND ended_at IS NULL AND expires_at > :now`,
     { tokenHash, now: new Date() },
+    transaction,
   );
   return row ? { familyMemberId: row.family_member_id, tokenHash } : null;
 }

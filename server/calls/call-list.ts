@@ -41,7 +41,12 @@ export async function listCalls(
     at: now,
   });
   const says = (row: CallRow): string =>
-    callSays(row, { wording, words: clinicWords(staff.language), person: personOf(row, people), seesResults });
+    callSays(row, {
+      wording,
+      words: clinicWords(staff.language),
+      person: personOf(row, people),
+      seesResults,
+    });
   return {
     open: open.map((row) => {
       const person = personOf(row, people);

@@ -1,16 +1,17 @@
 import type { Sequelize, Transaction } from 'sequelize';
+import { can, isRole } from '../../shared/access/rights';
 import type { FamilyMember as FamilyMemberAnswer } from '../../shared/contracts/children';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { inTransaction, select } from '../database/connection';
-import { invalid } from '../http/problem';
+import { invalid, Problem } from '../http/problem';
 import { announce } from '../live/announce';
 import { planComingNights } from '../messages/plan-coming-nights';
 import { siteOf } from '../sites/sites';
 import { checkedFamilyMember, type FamilyMemberDetails } from './contact-details';
 import { ChildFamilyMember, ContactConsent, FamilyMember } from './family-member-model';
-import { childInReach } from './reach';
+import { childInReach, type ReachedChild } from './reach';
 
 /** How consents to being written to were asked; the sentence that staff read out, by version. */
 const consentAsked = { how: 'asked by staff', wordingVersion: 'contact-consent 1' } as const;
@@ -30,6 +31,7 @@ export async function addFamilyMember(
     const site = await siteOf(db, child.siteId, transaction);
     const { member, errors } = checkedFamilyMember(details, site.country);
     if (errors.length > 0) throw invalid(errors);
+    await refuseStanding(transaction, staff, child, member);
     const familyMemberId = await linkFamilyMember(transaction, {
       childId,
       householdId: child.householdId,
@@ -47,6 +49,38 @@ export async function addFamilyMember(
       at: now,
     });
     await announce(db, transaction, 'children', childId);
+  });
+}
+
+/**
+ * Who keeps contact details adds helpers and changes nobody's standing: whoever is a guardian, consents or sees results
+ * is for those to say who keep the child's record. Else a number added at the front desk could read the letters.
+ * @throws Problem 403 'standing-is-decided'
+ */
+async function refuseStanding(
+  transaction: Transaction,
+  staff: StaffMember,
+  child: ReachedChild,
+  member: FamilyMemberDetails,
+): Promise<void> {
+  if (can(staff.roles.filter(isRole), 'children.write')) return;
+  const familyMemberId = await knownMemberId(transaction, child.householdId, member);
+  const tie =
+    familyMemberId === null
+      ? null
+      : await ChildFamilyMember.findOne({
+          where: { childId: child.id, familyMemberId },
+          transaction,
+        });
+  const isSame = tie
+    ? tie.standing === member.standing &&
+      tie.mayConsent === member.mayConsent &&
+      tie.seesResults === member.seesResults
+    : member.standing === 'helper';
+  if (isSame) return;
+  const message = 'The nurse or the clinician says who is a guardian and who sees results.';
+  throw new Problem(403, 'standing-is-decided', message, {
+    errors: [{ path: 'standing', message }],
   });
 }
 

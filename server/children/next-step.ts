@@ -18,11 +18,7 @@ export interface LatestOrder {
 }
 
 /** What stands next for a child, in words; names no result, so that every role may read it. */
-export function nextStep(
-  words: ClinicWords,
-  order: LatestOrder | undefined,
-  today: Day,
-): string {
+export function nextStep(words: ClinicWords, order: LatestOrder | undefined, today: Day): string {
   const say = (key: string): string => words.text(`clinic.step.${key}`);
   if (!order) return say('no-order');
   if (order.seriesState === null) {

@@ -28,6 +28,23 @@ export function withinReach(staff: StaffMember): ReachCondition {
   };
 }
 
+/** Of these children, those whose records the staff member may open. */
+export async function childIdsInReach(
+  db: Sequelize,
+  staff: StaffMember,
+  childIds: readonly number[],
+): Promise<ReadonlySet<number>> {
+  if (childIds.length === 0) return new Set();
+  const reach = withinReach(staff);
+  const rows = await select<{ id: number }>(
+    db,
+    `SELECT children.id FROM children JOIN households ON households.id = children.household_id
+     WHERE children.id IN (:childIds) AND ${reach.sql}`,
+    { ...reach.replacements, childIds },
+  );
+  return new Set(rows.map(({ id }) => id));
+}
+
 export interface ReachedChild {
   readonly id: number;
   readonly householdId: number;

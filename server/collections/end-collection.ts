@@ -210,7 +210,7 @@ function warningsFor(words: ClinicWords, input: Collected, profile: StoredProfil
     if (minutes > profile.neutraliseWithinMinutes)
       warn('neutralised-late', {
         minutes: minutesInWords(words, minutes),
-        limit: minutesInWords(words, profile.neutraliseWithinMinutes),
+        limit: String(profile.neutraliseWithinMinutes),
       });
   }
   if (input.label === null) warn('not-labelled');

@@ -3,6 +3,7 @@ import type { MorningChanged } from '../../shared/contracts/this-morning';
 import { dayOf } from '../../shared/domain/zone';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
+import { childInReach } from '../children/reach';
 import type { Context } from '../context';
 import { change, inTransaction } from '../database/connection';
 import { changedMeanwhile, notFound, Problem } from '../http/problem';
@@ -78,6 +79,9 @@ async function lockedPlan(
   });
   const [plan] = await morningPlansOf(db, { morningIds: [morningId] }, transaction);
   if (!plan || plan.siteId !== staff.siteId) throw notFound('This morning');
+  await childInReach(db, staff, plan.childId, transaction).catch(() => {
+    throw notFound('This morning');
+  });
   return plan;
 }
 

@@ -59,11 +59,7 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
     escort: escort ? `${escort.relationship}, ${escort.full_name}` : null,
     phones: phonesOf(facts.adults, escort),
     cautions: plan.cautions.map((caution) => cautionSays(words, caution)),
-    warnings: warningsOf(
-      words,
-      facts,
-      likeNamesOf(plan.childId, plan.fullName, around.names),
-    ),
+    warnings: warningsOf(words, facts, likeNamesOf(plan.childId, plan.fullName, around.names)),
     said: facts.said.map((row) => ({
       at: new Date(toldAtOf(row)).toISOString(),
       source: sourceSays(words, row.source),

@@ -88,7 +88,8 @@ export function verdictSays(
   }
   if (facts.collection?.outcome === 'not-collected')
     return say('not-collected', { reason: facts.collection.not_collected_reason ?? noReason });
-  if (facts.plan.state === 'lost') return say('lost', { reason: facts.plan.lostReason ?? noReason });
+  if (facts.plan.state === 'lost')
+    return say('lost', { reason: facts.plan.lostReason ?? noReason });
   if (facts.plan.fedAt !== null) return sayAt('fed', facts.plan.fedAt);
   if (plan.kind === 'individual') return say('individual');
   if (fast.ceiling === 'feed' && fast.longestAt !== null)
@@ -103,10 +104,7 @@ export function verdictSays(
   if (fast.isPlanOnly) return say('unknown');
   if (fast.isUnsure || fast.verdict === 'cannot-tell') return say('cannot-tell');
   if (fast.readyAt !== null && fast.readyAt > now)
-    return sayAt(
-      fast.verdict === 'not-long-enough' ? 'not-until' : 'long-enough-at',
-      fast.readyAt,
-    );
+    return sayAt(fast.verdict === 'not-long-enough' ? 'not-until' : 'long-enough-at', fast.readyAt);
   return say('long-enough');
 }
 

@@ -4,6 +4,7 @@ import { nextChild } from '../../shared/domain/order-of-morning';
 import { addDays, dayOf } from '../../shared/domain/zone';
 import type { Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
+import { childIdsInReach } from '../children/reach';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { laboratoryProfileOf, type StoredProfile } from '../protocols/protocols';
@@ -28,7 +29,18 @@ export async function thisMorning(
   const site = await siteOf(db, staff.siteId);
   const on = wantedOn ?? dayOf(now, site.zone);
   const words = clinicWords(staff.language);
-  const sheet = await sheetOf(context, site, on, now, words);
+  const whole = await sheetOf(context, site, on, now, words);
+  const reached = await childIdsInReach(
+    db,
+    staff,
+    whole.rows.map(({ childId }) => childId),
+  );
+  const isReached = ({ childId }: { readonly childId: number }): boolean => reached.has(childId);
+  const sheet = {
+    ...whole,
+    facts: whole.facts.filter(({ plan }) => isReached(plan)),
+    rows: whole.rows.filter(isReached),
+  };
   const otherDays = await select<{ on: Day }>(
     db,
     `SELECT DISTINCT planned_on AS \`on\` FROM mornings
@@ -46,8 +58,9 @@ export async function thisMorning(
     on,
     now: new Date(now).toISOString(),
     summary: summaryOf(words, sheet.rows),
-    suggestion: suggestionOf(words, sheet, now),
-    rooms: sheet.rooms.map((room) => roomState(words, room, sheet, now)),
+    suggestion: sheet.rows.length === whole.rows.length ? suggestionOf(words, whole, now) : null,
+    // A room is in use by whichever child; the name is for those who may open its record.
+    rooms: whole.rooms.map((room) => roomState(words, room, whole, now, isReached)),
     rows: sheet.rows,
     otherDays: otherDays.map((other) => other.on),
     protocolSays: [...new Set(sheet.facts.map(({ plan }) => plan.protocol.says))]
@@ -121,12 +134,14 @@ function roomState(
   room: SiteRoom,
   sheet: Sheet,
   now: Instant,
+  isReached: (plan: { readonly childId: number }) => boolean,
 ): ThisMorning['rooms'][number] {
   const { id, name } = room;
   const freeAt = roomFreeAt(room, sheet.facts);
   if (freeAt === null) {
     const inside = sheet.facts.find(
-      ({ collection }) => collection?.room_id === id && collection.ended_at === null,
+      ({ collection, plan }) =>
+        collection?.room_id === id && collection.ended_at === null && isReached(plan),
     );
     return {
       id,
@@ -158,11 +173,7 @@ function roomState(
   };
 }
 
-function suggestionOf(
-  words: ClinicWords,
-  sheet: Sheet,
-  now: Instant,
-): ThisMorning['suggestion'] {
+function suggestionOf(words: ClinicWords, sheet: Sheet, now: Instant): ThisMorning['suggestion'] {
   const waiting = sheet.facts.filter(
     ({ plan, collection }) => plan.state === 'here' && !collection && plan.fedAt === null,
   );

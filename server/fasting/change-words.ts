@@ -116,7 +116,15 @@ function late(
     answer: words.text('change.late.choice', { time }),
     toldUs: ({ callMe }: MorningPlan) => words.text('told-us.late', { name: callMe, time }),
   };
-  const hungry = night.children.filter((plan) => wouldPass(plan, newArrivalAt, before));
+  const phone = night.children[0] ? dawnPhoneOf(night.children[0]) : null;
+  const doesAnswer = phone !== null && phone.answersFrom <= now && now < phone.answersUntil;
+  const hasOwnPlan = (plan: MorningPlan): boolean => standardPlanOf(plan) === null;
+  // Nobody has set how long a child with a plan of its own may wait; while nobody can be asked, food comes first.
+  const hungry = night.children.filter((plan) =>
+    hasOwnPlan(plan) ? !doesAnswer : wouldPass(plan, newArrivalAt, before),
+  );
+  if (hungry.length === 0 && phone !== null && night.children.some(hasOwnPlan))
+    return { ...common, ...askAboutOwnPlan(night, words, phone.answersUntil) };
   if (hungry.length === 0)
     return {
       ...common,
@@ -128,9 +136,7 @@ function late(
       ],
       weCallBy: null,
     };
-  const others = night.children.filter((plan) => !hungry.includes(plan));
-  const phone = night.children[0] ? dawnPhoneOf(night.children[0]) : null;
-  const doesAnswer = phone !== null && phone.answersFrom <= now && now < phone.answersUntil;
+  const others = night.children.filter((plan) => !hungry.includes(plan) && !hasOwnPlan(plan));
   const weCallBy =
     phone !== null && now < phone.answersFrom ? phone.answersFrom + callBackMinutes * minute : null;
   return {
@@ -155,6 +161,29 @@ function late(
         : [words.text('outcome.feed-now-and-call.others', { children: words.list(others) })]),
     ],
     weCallBy,
+  };
+}
+
+/** How long a child with a plan of its own may wait, only a person knows: the family calls before it leaves. */
+function askAboutOwnPlan(
+  { children, site }: HouseholdNight,
+  words: FamilyWords,
+  answersUntil: Instant,
+): Pick<ChangeSaying, 'kind' | 'heading' | 'lines' | 'weCallBy'> {
+  const others = children.filter((plan) => standardPlanOf(plan) !== null);
+  return {
+    kind: 'call-us',
+    heading: words.text('outcome.call-us.heading'),
+    lines: [
+      words.text('outcome.call-us.phone', {
+        phone: shownPhone(site.phone, site.country),
+        time: words.time(answersUntil),
+      }),
+      ...(others.length === 0
+        ? []
+        : [words.text('outcome.call-us.until-then', { children: words.list(others) })]),
+    ],
+    weCallBy: null,
   };
 }
 

@@ -1,3 +1,4 @@
+import type { Transaction } from 'sequelize';
 import type { ShownTime } from '../../shared/contracts/family-morning';
 import type { Instant } from '../../shared/domain/day';
 import { ageOn } from '../../shared/domain/day';
@@ -36,6 +37,7 @@ export async function familyWords(
   { db }: Pick<Context, 'db'>,
   language: string,
   site: Site | null,
+  transaction?: Transaction,
 ): Promise<FamilyWords> {
   if (!canSpeak(language))
     throw new Problem(
@@ -44,7 +46,7 @@ export async function familyWords(
       'The clinic tells you everything by telephone, in your language.',
       { language, phone: site?.phone ?? null },
     );
-  return wordsFrom(await loadWording(db, language), site?.zone ?? 'UTC');
+  return wordsFrom(await loadWording(db, language, transaction), site?.zone ?? 'UTC');
 }
 
 export function wordsFrom(wording: Wording, zone: string): FamilyWords {

@@ -57,7 +57,7 @@ export async function recordMorningChangeIn(
   const { db } = context;
   const now = context.clock.now();
   const night = await lockedNight(db, transaction, submission, submission.on, now);
-  const words = await familyWords(context, submission.language, night.site);
+  const words = await familyWords(context, submission.language, night.site, transaction);
   const ids = night.children.map(({ morningId }) => morningId);
   const before = await toldRows(db, ids, transaction);
   if (!before.some((row) => row.submission_key === submission.submissionKey)) {

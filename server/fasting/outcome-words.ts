@@ -66,7 +66,7 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
       door: night.site.door,
       time: words.time(comesAt(night)),
     }),
-    lines: [stillNothing(checked, words)],
+    lines: stillNothing(checked, words),
   }),
 
   'come-and-wait': ({ night, checked, words }) => {
@@ -85,7 +85,7 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
       lines: [
         words.text('outcome.all-right'),
         ...(isOne ? [] : waits.map((wait) => words.text('outcome.come-and-wait.child', wait))),
-        stillNothing(checked, words),
+        ...stillNothing(checked, words),
       ],
     };
   },
@@ -95,7 +95,7 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
     lines: [
       words.text('outcome.all-right'),
       words.text('outcome.call-us.phone', phoneOf(night, words)),
-      words.text('outcome.call-us.until-then', { children: words.list(plansOf(checked)) }),
+      ...nothingFor(checked, words, 'outcome.call-us.until-then'),
     ],
   }),
 
@@ -107,7 +107,7 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
         children: words.list(withOutcome(checked, 'come-nurse-decides')),
         door: night.site.door,
       }),
-      stillNothing(checked, words),
+      ...stillNothing(checked, words),
     ],
   }),
 
@@ -118,7 +118,7 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
       lines: [
         words.text('outcome.all-right'),
         words.text('outcome.stay-we-call.keep-phone'),
-        words.text('outcome.stay-we-call.until-then', { children: words.list(plansOf(checked)) }),
+        ...nothingFor(checked, words, 'outcome.stay-we-call.until-then'),
         words.text('outcome.stay-we-call.no-call', {
           phone: shownPhone(night.site.phone, night.site.country),
           weCallBy: by,
@@ -129,7 +129,9 @@ const sayings: Readonly<Record<FastingOutcome, (saying: Saying) => Said>> = {
 
   'feed-now-and-call': ({ night, checked, words, weCallBy }) => {
     const fed = withOutcome(checked, 'feed-now-and-call');
-    const others = plansOf(checked).filter((plan) => !fed.includes(plan));
+    const others = plansOf(checked).filter(
+      (plan) => !fed.includes(plan) && standardPlanOf(plan) !== null,
+    );
     const doesPhoneAnswer = checked.some(({ check }) => check.phoneAnswers);
     return {
       heading: words.text('outcome.feed-now-and-call.heading', { children: words.list(fed) }),
@@ -155,8 +157,16 @@ function phoneOf({ site, children }: HouseholdNight, words: FamilyWords) {
   return { phone: shownPhone(site.phone, site.country), time: words.time(until) };
 }
 
-function stillNothing(checked: readonly CheckedChild[], words: FamilyWords): string {
-  return words.text('outcome.still-nothing', { children: words.list(plansOf(checked)) });
+const stillNothing = (checked: readonly CheckedChild[], words: FamilyWords): string[] =>
+  nothingFor(checked, words, 'outcome.still-nothing');
+
+/**
+ * Who goes on with nothing by mouth. A child with a plan of its own keeps to that one: a family is never told to let such
+ * a child go on without food for a time that nobody has set.
+ */
+function nothingFor(checked: readonly CheckedChild[], words: FamilyWords, key: string): string[] {
+  const plans = plansOf(checked).filter((plan) => standardPlanOf(plan) !== null);
+  return plans.length === 0 ? [] : [words.text(key, { children: words.list(plans) })];
 }
 
 /** What the family chose, as one sentence for "You told us". */

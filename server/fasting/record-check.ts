@@ -85,7 +85,7 @@ export async function recordFastingCheckIn(
   const { db } = context;
   const now = context.clock.now();
   const night = await lockedNight(db, transaction, submission, submission.on, now);
-  const words = await familyWords(context, submission.language, night.site);
+  const words = await familyWords(context, submission.language, night.site, transaction);
   const plans = plansOfAnswers(night, submission);
   const before = await toldRows(
     db,

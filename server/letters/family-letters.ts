@@ -23,10 +23,10 @@ async function stillWaiting(
   context: Context,
   visitor: FamilyVisitor,
   wording: Wording,
-): Promise<FamilyLetterList['waiting']> {
-  const series = await select<{ id: number; site_id: number; call_me: string }>(
+): Promise<{ childIds: number[]; waiting: FamilyLetterList['waiting'] }> {
+  const series = await select<{ id: number; child_id: number; site_id: number; call_me: string }>(
     context.db,
-    `SELECT series.id, series.site_id, children.call_me
+    `SELECT series.id, series.child_id, series.site_id, children.call_me
      FROM series JOIN children ON children.id = series.child_id
        JOIN child_family_members ON child_family_members.child_id = children.id
      WHERE child_family_members.family_member_id = :familyMemberId AND child_family_members.standing = 'guardian'
@@ -49,7 +49,7 @@ async function stillWaiting(
           : wording.text('letter.list.waiting', { day: familyDay(by, wording.profile).text }),
     });
   }
-  return waiting;
+  return { childIds: series.map(({ child_id }) => child_id), waiting };
 }
 
 export async function listFamilyLetters(
@@ -70,10 +70,11 @@ export async function listFamilyLetters(
      FROM ${joined} WHERE ${mayRead} ORDER BY letters.released_at DESC`,
     { familyMemberId: visitor.familyMemberId },
   );
+  const { childIds, waiting } = await stillWaiting(context, visitor, wording);
   await record(context.db, undefined, actor, {
     action: 'seen',
     matter: 'family-letters',
-    childIds: rows.map((row) => row.child_id),
+    childIds: [...new Set([...rows.map((row) => row.child_id), ...childIds])],
     at: context.clock.now(),
   });
   return {
@@ -84,7 +85,7 @@ export async function listFamilyLetters(
       releasedAt: row.released_at.toISOString(),
       isNew: row.first_opened_at === null,
     })),
-    waiting: await stillWaiting(context, visitor, wording),
+    waiting,
   };
 }
 

@@ -61,20 +61,41 @@ function recipientsOf(
   );
 }
 
-/** Every call about something critical is done and ended in "told". */
+interface DangerCall {
+  readonly reason: 'positive-result' | 'critical-result';
+  /** Names specimen, test and value: the same in every try of one call. */
+  readonly detail: string | null;
+  readonly outcome: string | null;
+  readonly is_open: 0 | 1;
+}
+
+/**
+ * Whether a person has told everything critical: no call about it is open, each ended in "told" (tries that reached
+ * nobody count as tries) or was found needless by a clinician, and one about a positive, where there is any, in "told".
+ */
 async function hasToldDanger(
   db: Sequelize,
   seriesId: number,
+  isPositive: boolean,
   transaction?: Transaction,
 ): Promise<boolean> {
-  const [row] = await select<{ calls: number; told: number | string | null }>(
+  const calls = await select<DangerCall>(
     db,
-    `SELECT COUNT(*) AS calls, SUM(done_at IS NOT NULL AND outcome = 'told') AS told
+    `SELECT reason, detail, outcome, done_at IS NULL AS is_open
      FROM call_tasks WHERE series_id = :seriesId AND reason IN ('positive-result', 'critical-result')`,
     { seriesId },
     transaction,
   );
-  return row !== undefined && row.calls > 0 && Number(row.told) === row.calls;
+  if (calls.some((call) => call.is_open === 1)) return false;
+  const endedWell = new Set(
+    calls
+      .filter(({ outcome }) => outcome === 'told' || outcome === 'not-needed')
+      .map(({ detail }) => detail),
+  );
+  if (calls.some(({ detail }) => !endedWell.has(detail))) return false;
+  return calls.some(
+    ({ reason, outcome }) => outcome === 'told' && (!isPositive || reason === 'positive-result'),
+  );
 }
 
 function lastAnswerOn(series: SeriesFacts, row: CaseRow): string | null {
@@ -124,7 +145,7 @@ export async function letterCaseOf(
     bornOn: row.born_on,
     siteName: row.site_name,
     recipients: await recipientsOf(db, series.childId, transaction),
-    hasToldDanger: await hasToldDanger(db, seriesId, transaction),
+    hasToldDanger: await hasToldDanger(db, seriesId, choice.positive, transaction),
     facts: {
       choice,
       callMe: row.call_me,

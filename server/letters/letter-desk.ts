@@ -1,5 +1,6 @@
+import type { Transaction } from 'sequelize';
 import type { LetterDesk } from '../../shared/contracts/letters';
-import { dayOf, ageOn } from '../../shared/domain/zone';
+import { dayOf } from '../../shared/domain/zone';
 import { languageOf, type LanguageId } from '../../shared/languages/languages';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
@@ -8,13 +9,12 @@ import { select } from '../database/connection';
 import { notFound } from '../http/problem';
 import { resultsOfSpecimens } from '../results/current-results';
 import { laboratorySays, specimenRows, toSpecimen } from '../specimens/specimen-rows';
+import { ageInWords } from '../wording/clinic-measures';
+import { clinicWording, clinicWords } from '../wording/clinic-words';
 import { canSpeak, loadWording, type Wording } from '../wording/render';
 import { letterCaseOf, type Choices, type LetterCase } from './letter-case';
 import { letterConditions } from './letter-conditions';
 import { isLeftOut, letterParts, wordingKeysOf, type LetterFacts } from './letter-parts';
-
-/** The clinic's own language; a letter is always read in it by the one who signs. */
-export const clinicLanguage = 'en';
 
 export async function signerName(context: Context, staffId: number): Promise<string> {
   const [row] = await select<{ full_name: string; credentials: string | null }>(
@@ -35,17 +35,14 @@ export const factsOf = (one: LetterCase, today: string, signer: string): LetterF
 export async function wordingsFor(
   context: Context,
   one: LetterCase,
+  transaction?: Transaction,
 ): Promise<Map<string, Wording>> {
   const wordings = new Map<string, Wording>();
-  for (const language of new Set([clinicLanguage, ...one.recipients.map((to) => to.language)]))
-    if (canSpeak(language)) wordings.set(language, await loadWording(context.db, language));
+  for (const language of new Set(one.recipients.map((to) => to.language)))
+    if (canSpeak(language))
+      wordings.set(language, await loadWording(context.db, language, transaction));
   return wordings;
 }
-
-const ageInWords = (bornOn: string, on: string): string => {
-  const { years, months } = ageOn(bornOn, on);
-  return years >= 2 ? `${years} years` : `${months} months`;
-};
 
 /** Recipients whose language is not signed off for this letter; nobody gets an unsigned text. */
 export function unsignedRecipients(
@@ -91,12 +88,14 @@ export async function openLetterDesk(
   choices: Choices,
 ): Promise<LetterDesk> {
   const now = context.clock.now();
+  const clinicLanguage = staff.language;
+  const words = clinicWords(clinicLanguage);
   const one = await letterCaseOf(context.db, staff.siteId, seriesId);
   if (!one) throw notFound('This series');
   const today = dayOf(now, one.facts.zone);
   const facts = factsOf(one, today, await signerName(context, staff.id));
   const wordings = await wordingsFor(context, one);
-  const clinic = await loadWording(context.db, clinicLanguage);
+  const clinic = await clinicWording(context.db, clinicLanguage);
   const clinicParts = letterParts(clinic, facts, choices);
   const familyLanguage = one.recipients[0]?.language ?? clinicLanguage;
   const family = wordings.get(familyLanguage);
@@ -105,7 +104,7 @@ export async function openLetterDesk(
   const unsigned = unsignedRecipients(one, wordings, keys);
   const conditions = letterConditions({ one, choices, now, today, unsigned, wording: clinic });
   const rows = await specimenRows(context.db, { siteId: staff.siteId, seriesIds: [seriesId] });
-  const results = await resultsOfSpecimens(context.db, one.series.specimenIds);
+  const results = await resultsOfSpecimens(context.db, words, one.series.specimenIds);
   await record(context.db, undefined, actor, {
     action: 'seen',
     matter: 'letter-desk',
@@ -122,8 +121,8 @@ export async function openLetterDesk(
     seriesId,
     childId: one.series.childId,
     childName: one.childName,
-    ageInWords: ageInWords(one.bornOn, today),
-    specimens: rows.map((row) => toSpecimen(row, results.get(row.id) ?? [], now)),
+    ageInWords: ageInWords(words, one.bornOn, today),
+    specimens: rows.map((row) => toSpecimen(words, row, results.get(row.id) ?? [], now)),
     letter: one.choice.letter,
     letterSays: letterName(one.choice.letter),
     whyNoOther: one.choice.whyNoOther.map(({ letter, reason }) =>
@@ -168,6 +167,6 @@ export async function openLetterDesk(
     canBeSigned: conditions.every((condition) => condition.isMet),
     earlier: await earlierLetters(context, seriesId),
     wordingSays: clinic.draftNotice(keys) ?? '',
-    laboratorySays: await laboratorySays(context.db, staff.siteId),
+    laboratorySays: await laboratorySays(context.db, staff.siteId, words),
   };
 }

@@ -1,11 +1,11 @@
 import type { LetterList } from '../../shared/contracts/letters';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
+import { withinReach } from '../children/reach';
 import type { Context } from '../context';
 import { select } from '../database/connection';
-import { loadWording } from '../wording/render';
+import { clinicWording } from '../wording/clinic-words';
 import { letterCaseOf } from './letter-case';
-import { clinicLanguage } from './letter-desk';
 
 interface LetterRow {
   readonly id: number;
@@ -52,14 +52,16 @@ export async function listLetters(
   actor: Actor,
   staff: StaffMember,
 ): Promise<LetterList> {
-  const wording = await loadWording(context.db, clinicLanguage);
+  const wording = await clinicWording(context.db, staff.language);
   const says = (letter: string): string => wording.text(`letter.says.${letter}`);
+  const reach = withinReach(staff);
   const open = await select<{ id: number; child_id: number; full_name: string }>(
     context.db,
     `SELECT DISTINCT series.id, series.child_id, children.full_name
      FROM series JOIN specimens ON specimens.series_id = series.id JOIN children ON children.id = series.child_id
-     WHERE series.site_id = :siteId ORDER BY series.id`,
-    { siteId: staff.siteId },
+       JOIN households ON households.id = children.household_id
+     WHERE series.site_id = :siteId AND ${reach.sql} ORDER BY series.id`,
+    { ...reach.replacements, siteId: staff.siteId },
   );
   const { letters, recipients } = await writtenLetters(context, staff.siteId);
   const items: Item[] = [];

@@ -69,14 +69,20 @@ function morningKey(specimen: SpecimenResults): string {
   return specimen.culture === 'negative-final' ? 'negative' : 'waiting';
 }
 
-function morningLines(wording: Wording, facts: LetterFacts): string[] {
-  return facts.mornings.flatMap(({ number, on }, index) => {
-    const specimen = facts.specimens[index];
-    if (!specimen || (facts.choice.positive && !isPositive(specimen))) return [];
-    const day = familyDay(on, wording.profile).text;
-    return wording.text(`letter.morning.${morningKey(specimen)}`, { day, number });
+const toldMornings = ({ mornings, specimens, choice }: LetterFacts) =>
+  mornings.flatMap(({ number, on }, index) => {
+    const specimen = specimens[index];
+    if (!specimen || (choice.positive && !isPositive(specimen))) return [];
+    return [{ number, on, specimen }];
   });
-}
+
+const morningLines = (wording: Wording, facts: LetterFacts): string[] =>
+  toldMornings(facts).map(({ number, on, specimen }) =>
+    wording.text(`letter.morning.${morningKey(specimen)}`, {
+      day: familyDay(on, wording.profile).text,
+      number,
+    }),
+  );
 
 function medicinesText(wording: Wording, facts: LetterFacts, chosen: ChosenParts): string | null {
   const { medicines, medicinesOn } = chosen;
@@ -144,7 +150,8 @@ function sentenceText(
 }
 
 /** The first sentence about the result carries the heading 'What we found'. */
-const isResult = (key: SentenceKey): boolean => key.startsWith('result-');
+const headingOf = (key: SentenceKey): string | null =>
+  key.startsWith('result-') ? 'result' : (headings[key] ?? null);
 
 /**
  * The letter in one language: medicines and next visit first, then the result, at once what it does not mean, the
@@ -156,8 +163,8 @@ export function letterParts(
   chosen: ChosenParts,
 ): LetterPart[] {
   const heading = (key: SentenceKey): string | null => {
-    const name = isResult(key) ? 'result' : headings[key];
-    return name === undefined ? null : wording.text(`letter.heading.${name}`);
+    const name = headingOf(key);
+    return name === null ? null : wording.text(`letter.heading.${name}`);
   };
   const parts = facts.choice.sentences.map((key): LetterPart => {
     const text = sentenceText(wording, facts, chosen, key);
@@ -195,18 +202,44 @@ export function letterParts(
 export const isLeftOut = (part: LetterPart, chosen: ChosenParts): boolean =>
   part.standing === 'may-be-left-out' && chosen.leftOut.includes(part.key);
 
+/** Every text that stands in this letter: all of them are signed off, or the letter is not sent. */
 export const wordingKeysOf = (
   parts: readonly LetterPart[],
   facts: LetterFacts,
   chosen: ChosenParts,
 ): string[] => [
-  `letter.title.${facts.choice.letter}`,
-  ...(chosen.medicines ? [`letter.medicines.${chosen.medicines}`] : []),
-  ...parts.flatMap(({ key }) =>
-    key === 'medicines'
-      ? []
-      : key === 'next-visit' || key === 'danger' || key === 'signature'
-        ? [`letter.${key}`]
-        : [`letter.sentence.${key}`],
-  ),
+  ...new Set([
+    `letter.title.${facts.choice.letter}`,
+    ...(chosen.medicines ? [`letter.medicines.${chosen.medicines}`] : []),
+    ...parts.flatMap(({ key }) => {
+      const heading = headingOf(key as SentenceKey);
+      return [
+        ...(heading === null ? [] : [`letter.heading.${heading}`]),
+        ...textKeysOf(key, facts),
+      ];
+    }),
+  ]),
 ];
+
+function textKeysOf(key: string, facts: LetterFacts): string[] {
+  switch (key) {
+    case 'medicines':
+      return [];
+    case 'next-visit':
+    case 'danger':
+      return [`letter.${key}`];
+    case 'signature':
+      return ['letter.signature', 'letter.signed-on'];
+    case 'last-answer-expected':
+      return [
+        facts.lastAnswerOn === null ? 'letter.list.waiting-no-date' : `letter.sentence.${key}`,
+      ];
+    case 'mornings-collected':
+      return [
+        `letter.sentence.${key}`,
+        ...toldMornings(facts).map(({ specimen }) => `letter.morning.${morningKey(specimen)}`),
+      ];
+    default:
+      return [`letter.sentence.${key}`];
+  }
+}

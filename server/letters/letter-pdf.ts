@@ -1,5 +1,6 @@
 import { record, type Actor } from '../access-record/record';
 import type { FamilyVisitor, StaffMember } from '../auth/current-user';
+import { childInReach } from '../children/reach';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { notFound } from '../http/problem';
@@ -61,6 +62,9 @@ export async function printLetterForClinic(
     { letterId, siteId: staff.siteId },
   );
   if (!row) throw notFound('This letter');
+  await childInReach(context.db, staff, row.child_id).catch(() => {
+    throw notFound('This letter');
+  });
   return printRow(context, actor, row, letterId);
 }
 

@@ -10,7 +10,8 @@ import { listFamilyLetters, openFamilyLetter } from './family-letters';
 import { openLetterDesk } from './letter-desk';
 import { listLetters } from './letter-list';
 import { printLetterForClinic, printLetterForFamily } from './letter-pdf';
-import { releaseLetter, signLetter } from './sign-letter';
+import { releaseLetter } from './release-letter';
+import { signLetter } from './sign-letter';
 
 const params = z.object({ id: idInPath });
 
@@ -45,7 +46,7 @@ export function lettersRoutes(context: Context): Router {
   );
   router.post(
     '/series/:id/letter-desk',
-    right('letters.read'),
+    right('letters.write'),
     handle({ params, body: letterChoices }, ({ params: { id }, body, actor, staff }) =>
       openLetterDesk(context, actor, staff, id, body),
     ),

@@ -7,20 +7,15 @@ import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import { verifyPassword } from '../auth/passwords';
 import type { Context } from '../context';
-import { change, inTransaction, select } from '../database/connection';
+import { inTransaction, select } from '../database/connection';
 import { invalid, notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
-import { tellLetterWaits } from '../messages/letter-waiting';
+import { clinicWording } from '../wording/clinic-words';
 import type { Wording } from '../wording/render';
 import { letterCaseOf, type Choices, type LetterCase } from './letter-case';
 import { letterConditions } from './letter-conditions';
-import {
-  clinicLanguage,
-  factsOf,
-  signerName,
-  unsignedRecipients,
-  wordingsFor,
-} from './letter-desk';
+import { factsOf, signerName, unsignedRecipients, wordingsFor } from './letter-desk';
+import { releaseIn, sameIds } from './release-letter';
 import { isLeftOut, letterParts, wordingKeysOf, type LetterFacts, type Tone } from './letter-parts';
 
 /** A letter as it was signed, in one language; later changes of wording do not reach it. */
@@ -64,9 +59,6 @@ async function checkPassword(
   if (!(await verifyPassword(row?.password_hash ?? null, password)))
     throw invalid([{ path: 'password', message: 'This is not your password.' }]);
 }
-
-const sameIds = (a: readonly number[], b: readonly number[]): boolean =>
-  [...a].sort((x, y) => x - y).join() === [...b].sort((x, y) => x - y).join();
 
 /** What a letter was made from; the same choice signed twice is one letter. */
 const fingerprint = (one: LetterCase, choices: Choices): string =>
@@ -119,11 +111,10 @@ async function insertLetter(
   one: LetterCase,
   choices: Choices,
   facts: LetterFacts,
+  clinic: Wording,
   wordings: ReadonlyMap<string, Wording>,
 ): Promise<number> {
   const now = new Date(context.clock.now());
-  const clinic = wordings.get(clinicLanguage);
-  if (!clinic) throw new Error(`No wording in ${clinicLanguage}`);
   const [letterId] = await context.db.query(
     `INSERT INTO letters (series_id, child_id, kind, state, is_final, choice, medicines, medicines_on, next_visit_at,
        clinic_language, clinic_body, signed_by_staff_id, signed_at)
@@ -146,7 +137,7 @@ async function insertLetter(
         medicines: choices.medicines,
         medicinesOn: choices.medicinesOn,
         nextVisitAt: choices.nextVisitAt === null ? null : new Date(choices.nextVisitAt),
-        clinicLanguage,
+        clinicLanguage: clinic.language,
         clinicBody: JSON.stringify(letterBody(clinic, facts, choices)),
         staffId: staff.id,
         now,
@@ -217,9 +208,9 @@ export async function signLetter(
     if (letterId === undefined) {
       const today = dayOf(now, one.facts.zone);
       const facts = factsOf(one, today, signer);
-      const wordings = await wordingsFor(context, one);
-      const clinic = wordings.get(clinicLanguage);
-      if (!clinic) throw new Error(`No wording in ${clinicLanguage}`);
+      const wordings = await wordingsFor(context, one, transaction);
+      // The one who signs reads the letter in the language of the screen.
+      const clinic = await clinicWording(context.db, staff.language, transaction);
       const keys = wordingKeysOf(letterParts(clinic, facts, choices), facts, choices);
       const unsigned = unsignedRecipients(one, wordings, keys);
       const open = letterConditions({ one, choices, now, today, unsigned, wording: clinic }).filter(
@@ -230,7 +221,16 @@ export async function signLetter(
           detail: open.map((condition) => condition.says).join(' '),
           errors: open.map(({ key, field, says }) => ({ path: field ?? key, message: says })),
         });
-      letterId = await insertLetter(context, transaction, staff, one, choices, facts, wordings);
+      letterId = await insertLetter(
+        context,
+        transaction,
+        staff,
+        one,
+        choices,
+        facts,
+        clinic,
+        wordings,
+      );
       await record(context.db, transaction, actor, {
         action: 'changed',
         matter: 'letter-signed',
@@ -243,54 +243,5 @@ export async function signLetter(
       await releaseIn(context, transaction, actor, staff, letterId, one.series.childId);
     await announce(context.db, transaction, 'letters', letterId);
     return { letterId, state: request.release ? 'released' : 'signed' };
-  });
-}
-
-async function releaseIn(
-  context: Context,
-  transaction: Transaction,
-  actor: Actor,
-  staff: StaffMember,
-  letterId: number,
-  childId: number,
-): Promise<void> {
-  const now = context.clock.now();
-  const touched = await change(
-    context.db,
-    `UPDATE letters SET state = 'released', released_at = :now, released_by_staff_id = :staffId, version = version + 1
-     WHERE id = :letterId AND state = 'signed'`,
-    { letterId, staffId: staff.id, now: new Date(now) },
-    transaction,
-  );
-  if (touched === 0) return;
-  await tellLetterWaits(context, transaction, letterId);
-  await record(context.db, transaction, actor, {
-    action: 'changed',
-    matter: 'letter-released',
-    childIds: [childId],
-    detail: { letterId },
-    at: now,
-  });
-}
-
-/** Releases a signed letter to the family; releasing twice tells the family once. @throws Problem 404. */
-export async function releaseLetter(
-  context: Context,
-  actor: Actor,
-  staff: StaffMember,
-  letterId: number,
-): Promise<LetterSigned> {
-  return inTransaction(context.db, async (transaction) => {
-    const [letter] = await select<{ child_id: number; state: string }>(
-      context.db,
-      `SELECT letters.child_id, letters.state FROM letters JOIN series ON series.id = letters.series_id
-       WHERE letters.id = :letterId AND series.site_id = :siteId FOR UPDATE`,
-      { letterId, siteId: staff.siteId },
-      transaction,
-    );
-    if (!letter || letter.state === 'withdrawn') throw notFound('This letter');
-    await releaseIn(context, transaction, actor, staff, letterId, letter.child_id);
-    await announce(context.db, transaction, 'letters', letterId);
-    return { letterId, state: 'released' };
   });
 }

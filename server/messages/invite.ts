@@ -1,3 +1,4 @@
+import type { Transaction } from 'sequelize';
 import type { SendInvitationAnswer } from '../../shared/contracts/children';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
@@ -57,7 +58,7 @@ export async function sendInvitation(
     );
     if (recent.length > 0)
       return { channels: [...new Set(recent.map(({ channel }) => channel))], callReason: null };
-    const childIds = await childrenOf(context, familyMemberId);
+    const childIds = await childrenOf(context, familyMemberId, transaction);
     const { householdId } = recipient;
     const { url } = await issueInvitation(db, transaction, settings, {
       familyMemberId,
@@ -84,11 +85,16 @@ export async function sendInvitation(
   });
 }
 
-async function childrenOf({ db }: Context, familyMemberId: number): Promise<number[]> {
+async function childrenOf(
+  { db }: Context,
+  familyMemberId: number,
+  transaction?: Transaction,
+): Promise<number[]> {
   const rows = await select<{ child_id: number }>(
     db,
     `SELECT child_id FROM child_family_members WHERE family_member_id = :familyMemberId ORDER BY child_id`,
     { familyMemberId },
+    transaction,
   );
   return rows.map((row) => row.child_id);
 }

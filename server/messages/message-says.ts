@@ -20,8 +20,7 @@ export function stateSays(words: ClinicWords, said: SaidState): string {
       : words.text('clinic.message.with-failure', { says, failure: words.sentence(failureSays) });
   switch (state) {
     case 'queued':
-      if (attempts > 0)
-        return withFailure(words.text('clinic.message.tried-again', { attempts }));
+      if (attempts > 0) return withFailure(words.text('clinic.message.tried-again', { attempts }));
       return words.text(isDue ? 'clinic.message.on-its-way' : 'clinic.message.waits');
     case 'sending':
       return words.text('clinic.message.on-its-way');

@@ -1,5 +1,6 @@
 import { existsSync } from 'node:fs';
 import { join } from 'node:path';
+import { clinicLanguages } from '../../shared/languages/clinic-languages';
 import { builtLanguages } from '../../shared/languages/languages';
 
 export type Application = 'family' | 'clinic';
@@ -14,14 +15,14 @@ export function builtApplications(
   distDir: string,
   application: Application,
 ): () => readonly string[] {
+  const offered: readonly string[] =
+    application === 'clinic' ? clinicLanguages : builtLanguages.map(({ id }) => id);
   let lookedAt = -Infinity;
   let found: readonly string[] = [];
   return () => {
     if (performance.now() - lookedAt > lookAgainMs) {
       lookedAt = performance.now();
-      found = builtLanguages
-        .map(({ id }) => id)
-        .filter((id) => existsSync(join(distDir, application, id, 'index.html')));
+      found = offered.filter((id) => existsSync(join(distDir, application, id, 'index.html')));
     }
     return found;
   };

@@ -1,4 +1,5 @@
 import { Router } from 'express';
+import { clinicLanguages } from '../../shared/languages/clinic-languages';
 import { isLanguageId } from '../../shared/languages/languages';
 import { linkOf } from '../auth/links';
 import type { Context } from '../context';
@@ -49,20 +50,23 @@ export function pages(context: Context): Router {
   });
   router.get('/clinic', (req, res, next) => {
     const isWithoutLanguage = /^\/clinic\/?$/.test(req.path);
-    if (isWithoutLanguage) res.redirect(302, '/clinic/en/');
+    const wanted = req.acceptsLanguages(...clinicLanguages.filter((id) => ofClinic().includes(id)));
+    if (isWithoutLanguage)
+      res.vary('Accept-Language').redirect(302, `/clinic/${wanted || clinicLanguages[0]}/`);
     else next();
   });
   router.use('/clinic/:language', (req, res, next) => {
     const language = String(req.params['language']);
-    if (ofClinic().includes(language))
-      staticApplication(distDir, 'clinic', language)(req, res, next);
-    else next();
+    // Handed back, so that the router hears of a failure.
+    return ofClinic().includes(language)
+      ? staticApplication(distDir, 'clinic', language)(req, res, next)
+      : next();
   });
   router.use('/:language', (req, res, next) => {
     const language = String(req.params['language']);
-    if (ofFamily().includes(language))
-      staticApplication(distDir, 'family', language)(req, res, next);
-    else next();
+    return ofFamily().includes(language)
+      ? staticApplication(distDir, 'family', language)(req, res, next)
+      : next();
   });
   router.use((req, res, next) => {
     if (req.method === 'GET' || req.method === 'HEAD')

@@ -8,33 +8,44 @@ export interface SmallPage {
   readonly body: string;
 }
 
-/** Three discs over a horizon: the mark. Drawn in the text's own colour, so that it follows the device's scheme. */
-const mark =
-  '<svg viewBox="0 0 96 40" width="96" height="40" aria-hidden="true"><g fill="currentColor"><circle cx="18" cy="26" r="6"/><circle cx="44" cy="22" r="9"/><circle cx="76" cy="17" r="13"/></g><path d="M2 35h92" stroke="currentColor" stroke-width="2"/></svg>';
+/** Three discs that rise over a horizon: the mark, in a band of the sky before sunrise. */
+const sky =
+  '<header class="sky"><svg viewBox="0 0 96 34" width="144" height="51" aria-hidden="true"><circle cx="16" cy="27" r="6"/><circle cx="42" cy="22" r="9"/><path d="M60 34a15 15 0 0 1 30 0Z"/></svg></header>';
 
-/** A page that needs no script and no other file; colours are the device's own, so that nothing flashes at night. */
+/**
+ * A page that needs no script and no other file. Colours and sky are those of the applications' theme; the device's
+ * scheme decides before the first paint, so that nothing flashes at night.
+ */
 export function smallPage({ language, dir, title, body }: SmallPage): string {
   return `<!doctype html>
 <html lang="${escapeHtml(language)}" dir="${dir}">
 <head>
 <meta charset="utf-8">
 <meta name="viewport" content="width=device-width, initial-scale=1">
+<meta name="color-scheme" content="light dark">
 <title>${escapeHtml(title)}</title>
 <style>
-:root{color-scheme:light dark}
-body{margin:0 auto;padding:2rem 1.25rem 3rem;max-width:36rem;font:1.125rem/1.6 Nunito,system-ui,sans-serif;background:Canvas;color:CanvasText}
-h1{font-size:1.6rem;line-height:1.3}
-ul{padding-inline-start:1.25rem}li{margin-block:.75rem}
+:root{color-scheme:light dark;--paper:#f6f7fb;--sheet:#fff;--text:#1b2036;--soft:#474e70;--ink:#2b3566;--line:#747ca8;--danger:#a11d22;--danger-soft:#fbe4e3}
+@media screen and (prefers-color-scheme:dark){:root{--paper:#10142a;--sheet:#191f3c;--text:#edeffc;--soft:#b9c0e2;--ink:#bcc6ff;--line:#7c84b3;--danger:#ffb4ac;--danger-soft:#4a1f24}}
+*{box-sizing:border-box}
+body{margin:0;font:1.125rem/1.6 Nunito,system-ui,sans-serif;background:var(--paper);color:var(--text)}
+:lang(ar) body,:lang(fa) body{font-size:1.25rem;line-height:1.8}
+.sky,main{padding-inline:max(1.25rem,calc((100vw - 36rem) / 2))}
+.sky{display:flex;align-items:flex-end;height:7rem;background:linear-gradient(#1a2150,#4a4580 55%,#85587f 82%,#e3a894);border-bottom:2px solid var(--line)}
+.sky svg{display:block;fill:#f0b79b}
+main{padding-block:1.75rem 3rem}
+h1{margin:0 0 1rem;font-size:1.6rem;line-height:1.3;text-wrap:balance}
+ul{margin:1.25rem 0;padding-inline-start:1.25rem}li{margin-block:.75rem}li::marker{color:var(--line)}
 .choices{list-style:none;padding:0}
-.choices a{display:block;min-height:3rem;padding:.6rem 1.25rem;border:2px solid;border-radius:1rem;text-decoration:none;font-weight:700;box-sizing:border-box}
-.choices a:focus-visible{outline:3px solid;outline-offset:3px}
-.urgent{border:2px solid;border-radius:1rem;padding:.75rem 1.25rem;font-weight:700}
-.soft{font-size:1rem}
-@media print{:root{color-scheme:light}body{padding:0}}
+.choices a{display:flex;align-items:center;min-height:3.5rem;padding:.5rem 1.25rem;border:2px solid var(--ink);border-radius:1rem;background:var(--sheet);color:var(--ink);text-decoration:none;font-weight:700}
+.choices a:focus-visible{outline:3px solid var(--ink);outline-offset:3px}
+.urgent{border:2px solid var(--danger);border-radius:1rem;padding:.75rem 1.25rem;background:var(--danger-soft);font-weight:700}
+.soft{color:var(--soft);font-size:1rem}
+@media print{.sky{display:none}main{padding:0}.urgent{background:none}}
 </style>
 </head>
 <body>
-${mark}
+${sky}
 <main>
 ${body}
 </main>

@@ -78,7 +78,9 @@ async function sendFile(req: Request, res: Response, root: string, path: string)
     res.sendFile(
       chosen.path.slice(root.length + 1),
       { root, cacheControl: false },
-      (error?: Error) => (error && !res.headersSent ? fail(error) : done()),
+      // Who left the page while it loaded needs no answer any more.
+      (error?: Error & { readonly code?: string }) =>
+        error && error.code !== 'ECONNABORTED' && !res.headersSent ? fail(error) : done(),
     );
   });
 }

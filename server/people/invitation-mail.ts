@@ -1,5 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { Transaction } from 'sequelize';
+import type { ClinicLanguage } from '../../shared/languages/clinic-languages';
+import { languageOf } from '../../shared/languages/languages';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { enqueue } from '../outbox/enqueue';
@@ -11,6 +13,8 @@ export interface InvitedStaff {
   readonly fullName: string;
   readonly email: string;
   readonly invitationLink: string;
+  /** Of the one who invites; nobody knows yet which one the invited person would choose. */
+  readonly language: ClinicLanguage;
 }
 
 const hour = 3_600_000;
@@ -34,8 +38,10 @@ export async function mailStaffInvitation(
     hours: usefulHours,
     url: invited.invitationLink,
   };
-  const words = shippedWords('en');
-  const say = (key: string): string => renderText(key, words[key] ?? '', 'en-US', params);
+  const { language } = invited;
+  const words = shippedWords(language);
+  const { intlTag } = languageOf(language);
+  const say = (key: string): string => renderText(key, words[key] ?? '', intlTag, params);
   const now = clock.now();
   await enqueue(db, transaction, {
     dedupeKey: `staff-invitation:${invited.staffId}:${randomUUID()}`,
@@ -45,7 +51,7 @@ export async function mailStaffInvitation(
     familyMemberId: null,
     staffId: invited.staffId,
     address: invited.email,
-    language: 'en',
+    language,
     wordingVersions: {},
     subject: say('staff.invitation.subject'),
     body: say('staff.invitation.mail'),

@@ -32,7 +32,9 @@ export function peopleRoutes(context: Context): Router {
   router.post(
     '/people',
     right('people.write'),
-    handle({ body: addStaffRequest }, ({ body, actor }) => addStaff(context, actor, body)),
+    handle({ body: addStaffRequest }, ({ body, actor, staff }) =>
+      addStaff(context, actor, staff, body),
+    ),
   );
   router.put(
     '/people/:staffId/roles',

@@ -11,6 +11,7 @@ import { isStaffRole } from '../../shared/access/rights';
 import { record } from '../access-record/record';
 import type { Actor } from '../access-record/record';
 import { endSessionsOf } from '../auth/session-store';
+import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { change, inTransaction, select } from '../database/connection';
 import { invalid, notFound, Problem } from '../http/problem';
@@ -120,6 +121,7 @@ export async function insertStaff(
 export async function addStaff(
   context: Context,
   actor: Actor,
+  { language }: Pick<StaffMember, 'language'>,
   request: z.output<typeof addStaffRequest>,
 ): Promise<AddStaffAnswer> {
   checkRoles(request.roles);
@@ -127,8 +129,13 @@ export async function addStaff(
   try {
     return await inTransaction(db, async (transaction) => {
       const id = await insertStaff(context, transaction, request);
-      const invitationLink = await issueStaffInvitation(context, transaction, id);
-      await mailStaffInvitation(context, transaction, { staffId: id, ...request, invitationLink });
+      const invitationLink = await issueStaffInvitation(context, transaction, id, language);
+      await mailStaffInvitation(context, transaction, {
+        staffId: id,
+        ...request,
+        invitationLink,
+        language,
+      });
       await recordChange(context, transaction, actor, { staffId: id, roles: request.roles });
       return { staff: await staffPerson(db, id, transaction), invitationLink };
     });

@@ -1,6 +1,7 @@
 import { randomBytes } from 'node:crypto';
 import type { Transaction } from 'sequelize';
 import type { AcceptStaffInvitationRequest } from '../../shared/contracts/clinic-session';
+import type { ClinicLanguage } from '../../shared/languages/clinic-languages';
 import { record } from '../access-record/record';
 import { hashPassword, passwordFault } from '../auth/passwords';
 import { endSessionsOf } from '../auth/session-store';
@@ -17,6 +18,7 @@ export async function issueStaffInvitation(
   { db, settings }: Pick<Context, 'db' | 'settings'>,
   transaction: Transaction,
   staffId: number,
+  language: ClinicLanguage = 'en',
 ): Promise<string> {
   const token = randomBytes(32).toString('base64url');
   const now = Date.now();
@@ -38,7 +40,7 @@ export async function issueStaffInvitation(
       transaction,
     },
   );
-  return `${settings.origin}/clinic/en/join/${token}`;
+  return `${settings.origin}/clinic/${language}/join/${token}`;
 }
 
 interface InvitationRow {

@@ -42,6 +42,22 @@ export function currentResultRows(
   );
 }
 
+/** Which results of a series count now. */
+export async function currentResultIds(
+  db: Sequelize,
+  seriesId: number,
+  transaction?: Transaction,
+): Promise<number[]> {
+  const rows = await select<{ id: number }>(
+    db,
+    `SELECT results.id FROM results JOIN specimens ON specimens.id = results.specimen_id
+     WHERE specimens.series_id = :seriesId AND results.is_current = TRUE`,
+    { seriesId },
+    transaction,
+  );
+  return rows.map(({ id }) => id);
+}
+
 /** A second look is needed for finals entered by hand and for corrections (PRACTICE 22). */
 export const needsSecondLook = (row: ResultRow): boolean =>
   row.second_look_by === null && (row.finality === 'final' || row.correction_reason !== null);
@@ -80,6 +96,9 @@ export async function resultsOfSpecimens(
 ): Promise<Map<number, Result[]>> {
   const bySpecimen = new Map<number, Result[]>();
   for (const row of await currentResultRows(db, specimenIds, transaction))
-    bySpecimen.set(row.specimen_id, [...(bySpecimen.get(row.specimen_id) ?? []), toResult(words, row)]);
+    bySpecimen.set(row.specimen_id, [
+      ...(bySpecimen.get(row.specimen_id) ?? []),
+      toResult(words, row),
+    ]);
   return bySpecimen;
 }

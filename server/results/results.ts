@@ -132,6 +132,13 @@ export async function enterResult(
       transaction,
     );
     if (!row) throw notFound('This specimen');
+    // The series first, as whoever signs or releases its letter: no result arrives under a signature.
+    await select(
+      context.db,
+      'SELECT id FROM series WHERE id = :seriesId FOR UPDATE',
+      { seriesId: row.series_id },
+      transaction,
+    );
     await select(
       context.db,
       'SELECT id FROM specimens WHERE id = :specimenId FOR UPDATE',

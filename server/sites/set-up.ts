@@ -41,7 +41,7 @@ export async function readSetUp({ db, clock }: Context, staff: StaffMember): Pro
     protocols: protocols.map((protocol) => ({
       id: protocol.id,
       version: protocol.version,
-      title: protocol.title,
+      title: words.sentence(protocol.title),
       effectiveOn: protocol.effectiveOn,
       hasStartingValues: protocol.isStartingValues,
       signedBy: protocol.signedBy,

@@ -181,7 +181,7 @@ function warningsOf(words: ClinicWords, row: SpecimenRow): string[] {
     warnings.push(
       words.text(`clinic.warning.${key}`, {
         minutes: minutesInWords(words, taken),
-        limit: minutesInWords(words, most),
+        limit: String(most),
         laboratory: profile.name,
       }),
     );

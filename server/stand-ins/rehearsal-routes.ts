@@ -22,7 +22,7 @@ export function rehearsalRoutes(context: Context): Router {
   router.get(
     '/rehearsal',
     right('rehearsal.use'),
-    handle({}, ({ actor }) => rehearsalState(context, actor, standIns)),
+    handle({}, ({ actor, staff }) => rehearsalState(context, actor, staff, standIns)),
   );
   router.post(
     '/rehearsal/clock',

@@ -5,7 +5,13 @@ import { familyDay } from '../../shared/languages/family-time';
 import { languageOf } from '../../shared/languages/languages';
 import { profileOf, type LanguageProfile } from '../../shared/languages/profiles';
 import { currentWordings } from './current-wording';
-import { renderText, UnknownWording, wordingFrom, type Wording, type WordingParams } from './render';
+import {
+  renderText,
+  UnknownWording,
+  wordingFrom,
+  type Wording,
+  type WordingParams,
+} from './render';
 import { sentenceIn } from './sentences';
 import { shippedClinicWords, shippedWords, type ShippedWords } from './shipped-words';
 
@@ -39,11 +45,7 @@ export function clinicWords(language: ClinicLanguage): ClinicWords {
   return words;
 }
 
-function wordsOf(
-  language: ClinicLanguage,
-  own: ShippedWords,
-  english: ShippedWords,
-): ClinicWords {
+function wordsOf(language: ClinicLanguage, own: ShippedWords, english: ShippedWords): ClinicWords {
   const { intlTag } = languageOf(language);
   const profile = profileOf(language);
   const text = (key: string, params: WordingParams = {}): string => {
@@ -51,7 +53,12 @@ function wordsOf(
     if (body === undefined) throw new UnknownWording(key, language);
     // Tests hold the languages level; should one slip, the clinic reads English and is not stopped.
     if (own[key] === undefined) process.emitWarning(`No words ${key} in ${language}`);
-    return renderText(key, body, own[key] === undefined ? languageOf('en').intlTag : intlTag, params);
+    return renderText(
+      key,
+      body,
+      own[key] === undefined ? languageOf('en').intlTag : intlTag,
+      params,
+    );
   };
   const list = (items: readonly string[]): string => {
     const last = items.at(-1) ?? '';

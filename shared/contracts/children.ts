@@ -50,35 +50,52 @@ export const familyMemberInput = z
   });
 export type FamilyMemberInput = z.input<typeof familyMemberInput>;
 
-export const addChildRequest = z.object({
-  /** Present when a brother or sister is already known. */
-  householdId: id.nullable().default(null),
-  fullName: shortText(160),
-  callMe: shortText(80),
-  /** What the family calls this child in texts; never the name. For example 'Baby'. */
-  familyLabel: shortText(40),
-  bornOn: day,
-  recordNumber: optionalText(40),
-  feeding,
-  cautions: z.array(caution).max(7),
-  travelMinutes: z.number().int().min(0).max(360),
-  familyMembers: z.array(familyMemberInput).max(8),
-  /** Repeats with the same key make one child. */
-  submissionKey: z.uuid(),
-});
+/** Texts go over open networks and other people's screens: they never say the name (product rule 2). */
+const labelIsNoName = {
+  path: ['familyLabel'],
+  message: 'This goes into texts, so it must not be the name. For example “Baby” or “Big girl”.',
+};
+const hasNamelessLabel = ({ fullName, familyLabel }: { fullName: string; familyLabel: string }) => {
+  const words = (text: string): readonly string[] =>
+    text.toLocaleLowerCase('en').match(/[\p{L}\p{M}\p{N}]+/gu) ?? [];
+  const label = words(familyLabel);
+  const name = words(fullName);
+  return name.length === 0 || !name.every((word) => label.includes(word));
+};
+
+export const addChildRequest = z
+  .object({
+    /** Present when a brother or sister is already known. */
+    householdId: id.nullable().default(null),
+    fullName: shortText(160),
+    callMe: shortText(80),
+    /** What the family calls this child in texts; never the name. For example 'Baby'. */
+    familyLabel: shortText(40),
+    bornOn: day,
+    recordNumber: optionalText(40),
+    feeding,
+    cautions: z.array(caution).max(7),
+    travelMinutes: z.number().int().min(0).max(360),
+    familyMembers: z.array(familyMemberInput).max(8),
+    /** Repeats with the same key make one child. */
+    submissionKey: z.uuid(),
+  })
+  .refine(hasNamelessLabel, labelIsNoName);
 export type AddChildRequest = z.input<typeof addChildRequest>;
 export const addFamilyMemberRequest = familyMemberInput;
 
-export const changeChildRequest = z.object({
-  version,
-  fullName: shortText(160),
-  callMe: shortText(80),
-  familyLabel: shortText(40),
-  bornOn: day,
-  recordNumber: optionalText(40),
-  feeding,
-  cautions: z.array(caution).max(7),
-});
+export const changeChildRequest = z
+  .object({
+    version,
+    fullName: shortText(160),
+    callMe: shortText(80),
+    familyLabel: shortText(40),
+    bornOn: day,
+    recordNumber: optionalText(40),
+    feeding,
+    cautions: z.array(caution).max(7),
+  })
+  .refine(hasNamelessLabel, labelIsNoName);
 export type ChangeChildRequest = z.input<typeof changeChildRequest>;
 
 export const childListItem = z.object({

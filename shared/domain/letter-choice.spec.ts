@@ -254,6 +254,9 @@ describe('the letter', () => {
     expect(resultOf(awaiting)).toBe('result-none-yet');
     expect(resultOf(negative)).toBe('result-negative-so-far');
     expect(resultOf(but({ amplification: 'trace' }))).toBe('result-unclear');
+    // Neither positive nor negative: not "not found so far".
+    expect(resultOf({ ...awaiting, amplification: 'invalid' })).toBe('result-none-yet');
+    expect(resultOf({ ...awaiting, culture: 'contaminated' })).toBe('result-none-yet');
     expect(choose([awaiting]).sentences).toContain('last-answer-expected');
   });
 

@@ -232,9 +232,13 @@ function factsOf({ specimens, isClosedEarly }: SeriesResults): Facts {
     answers: specimens.map((specimen) => answerOf(specimen, isClosedEarly)),
     states: specimens.map((specimen) => specimen.state),
     isClosedEarly,
+    // Invalid, contaminated and another germ are neither positive nor negative: they are no "not found so far".
     hasInterimNews: specimens.some(
       ({ smear, amplification, culture }) =>
-        smear !== null || amplification !== null || culture !== null,
+        smear === 'negative' ||
+        amplification === 'not-detected' ||
+        culture === 'no-growth-yet' ||
+        culture === 'negative-final',
     ),
     critical: specimens.some(isCritical),
     needsSecondLook: specimens.some(

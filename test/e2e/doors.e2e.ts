@@ -1,4 +1,6 @@
-import type { ChildList, ChildRecord } from '../../shared/contracts/children';
+import { once } from 'node:events';
+import { connect } from 'node:net';
+import type { ChildRecord } from '../../shared/contracts/children';
 import type { LetterList } from '../../shared/contracts/letters';
 import { addDays } from '../../shared/domain/zone';
 import { FamilyPhone } from './support/family-phone';
@@ -92,7 +94,7 @@ test('the front desk sees no results and no letters, in the menu or by address',
     await hanna.goto(`/clinic/en/${screen}`);
     await expect(hanna).toHaveURL(/\/clinic\/en\/this-morning$/);
   }
-  for (const path of ['results', 'letters', 'letters/1.pdf', 'series/1/letter-desk', 'specimens'])
+  for (const path of ['results', 'letters', 'letters/1.pdf', 'specimens'])
     expect((await hanna.request.get(`/api/clinic/${path}`)).status(), path).toBe(403);
 });
 
@@ -133,9 +135,24 @@ test('a double click on "Sign and release" makes one letter and one notice', asy
 
   await house.standIns.text(motherPhone, /A letter is ready/, before);
   const { letters } = await house.get<LetterList>('/api/clinic/letters');
-  expect(letters.filter(({ childName, id }) => childName === name && id !== null)).toHaveLength(1);
-  const { children } = await house.get<ChildList>(`/api/clinic/children?find=${name}`);
-  const record = await house.get<ChildRecord>(`/api/clinic/children/${children[0]?.id}`);
-  const notices = record.happenings.filter(({ kind }) => kind === 'letter');
-  expect(notices.filter(({ says }) => /signed/i.test(says))).toHaveLength(1);
+  const ofChild = letters.filter(({ childName }) => childName === name);
+  expect(ofChild.map(({ state }) => state)).toEqual(['released']);
+  const record = await house.get<ChildRecord>(`/api/clinic/children/${ofChild[0]?.childId}`);
+  expect(record.happenings.filter(({ says }) => says === 'Letter signed.')).toHaveLength(1);
+  const notices = (await house.standIns.texts(motherPhone)).slice(before);
+  expect(notices.filter(({ body }) => /A letter is ready/.test(body))).toHaveLength(1);
+});
+
+test('a visitor who leaves before the page has come does no harm', async ({ house }) => {
+  const { hostname, port } = new URL(house.origin);
+  const leaveEarly = async (): Promise<void> => {
+    const socket = connect(Number(port), hostname);
+    await once(socket, 'connect');
+    socket.write(`GET /clinic/en/ HTTP/1.1\r\nHost: ${hostname}\r\n\r\n`, () => socket.destroy());
+    await once(socket, 'close');
+  };
+  for (let round = 0; round < 10; round += 1) {
+    await Promise.all(Array.from({ length: 10 }, leaveEarly));
+    expect((await fetch(`${house.origin}/clinic/en/`)).status).toBe(200);
+  }
 });

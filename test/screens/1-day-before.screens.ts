@@ -6,12 +6,13 @@ import { dayOf } from '../../shared/domain/zone';
 import { Album } from './support/album';
 import { altered, broken, emptied, silent, unreached } from './support/answers';
 import { FamilyVoice, linkOf, readIn } from './support/families';
-import { clinicScreens } from './support/clinic-screens';
+import { clinicGroup, clinicGroups } from './support/clinic-screens';
 import { languagesOf, schemes, viewsOf, widths } from './support/views';
 
 const parwin = { phone: '+13125550111', child: 'Noor Rahimi' };
 const salma = { phone: '+13125550121', child: 'Idris Haddad' };
 const mai = { phone: '+13125550181', child: 'Trần Gia Linh' };
+const ines = '+13125550151';
 const family = languagesOf('family');
 const home = (language: string): string => `/${language}/`;
 const clinic = languagesOf('clinic');
@@ -85,8 +86,9 @@ test('the night before, two children', async ({ browser }) => {
     browser,
     { group: 'family-next', languages: family, cookies, speak },
     async (album) => {
-        await album.shoot({ name: 'next-morning-two', address: home });
+      await album.shoot({ name: 'next-morning-two', address: home });
       await album.shoot({ name: 'next-morning-print', address: home, media: 'print' });
+      await album.shoot({ name: 'forced-colors', address: home, hasForcedColors: true });
       await album.shoot({ name: 'question-too-early', address: (l) => `/${l}/morning` });
       await album.shoot({ name: 'calendar', address: (l) => `/${l}/calendar` });
       await album.shoot({ name: 'letters-code', address: (l) => `/${l}/letters` });
@@ -106,16 +108,27 @@ test('the night before, two children', async ({ browser }) => {
       await album.both((context) => context.unrouteAll());
       await album.both((context) => unreached(context, '**/api/family/calendar'));
       await album.shoot({ name: 'calendar-unreached', address: (l) => `/${l}/calendar` });
-      await album.both((context) =>
-        altered(context, '**/api/family/next-morning', (body) => ({
-          ...emptied(body),
-          state: 'none',
-          on: null,
-          door: null,
-          question: null,
-        })),
-      );
+    },
+  );
+  await voice.close();
+  await house.close();
+});
+
+test('a family before anything is planned', async ({ browser }) => {
+  const house = await House.open();
+  const voice = await FamilyVoice.open();
+  await voice.signInByCode(house.standIns, ines);
+  await Album.fill(
+    browser,
+    {
+      group: 'family-empty',
+      languages: family,
+      cookies: await voice.cookies(),
+      speak: (language) => readIn(ines, language),
+    },
+    async (album) => {
       await album.shoot({ name: 'empty', address: home });
+      await album.shoot({ name: 'calendar-empty', address: (l) => `/${l}/calendar` });
     },
   );
   await voice.close();
@@ -143,16 +156,20 @@ test('the night before, one child', async ({ browser }) => {
   await house.close();
 });
 
-test('the clinic on the day before', async ({ browser, people }) => {
-  const house = await House.open();
-  for (const { group, who, screens } of await clinicScreens(house)) {
+for (const group of clinicGroups)
+  test(`the clinic on the day before: ${group}`, async ({ browser, people }) => {
+    const house = await House.open();
+    const { who, screens } = await clinicGroup(house, group);
     const cookies = who === null ? undefined : await (await people.staff(who)).context().cookies();
-    await Album.fill(browser, { group, languages: clinic, cookies }, async (album) => {
-      for (const screen of screens) await album.shoot(screen);
-    });
-  }
-  await house.close();
-});
+    await Album.fill(
+      browser,
+      { group: `clinic-${group}`, languages: clinic, cookies },
+      async (album) => {
+        for (const screen of screens) await album.shoot(screen);
+      },
+    );
+    await house.close();
+  });
 
 test('the clinic with nothing in it, with a fault, and while it waits', async ({
   browser,

@@ -16,7 +16,12 @@ test('this morning', async ({ browser, people }) => {
   const house = await House.open();
   const rosa = await people.staff('rosa');
   const board = new ThisMorningScreen(rosa);
-  await house.moveTo((await house.now()) + 60 * minute);
+  for (const [phone, body] of [
+    ['+13125550121', '1'],
+    ['+13125550132', '2'],
+  ])
+    await house.post('/api/clinic/rehearsal/replies', { phone, body });
+  await house.moveTo((await house.now()) + 90 * minute);
   await board.open();
   await Album.fill(
     browser,
@@ -48,6 +53,7 @@ test('this morning', async ({ browser, people }) => {
       await form.getByRole('button', { name: 'Keep this door check' }).click();
       await act(1, /^Arrived/);
       await album.shoot({ name: 'one-checked', address });
+      await album.shoot({ name: 'forced-colors', address, hasForcedColors: true });
       await act(0, /^Begin in Room|^Collect now/);
       await album.shoot({ name: 'collecting', address, prepare: (page) => press(page, 0) });
       await act(0, /^Collected/);

@@ -1,5 +1,7 @@
 import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
+import { once } from 'node:events';
+import { connect, type AddressInfo } from 'node:net';
 import { join } from 'node:path';
 import { brotliCompressSync, gzipSync } from 'node:zlib';
 import request from 'supertest';
@@ -28,8 +30,13 @@ beforeAll(async () => {
   }
   writeFileSync(join(folder, 'secret.txt'), 'secret');
   // A language that the list does not offer yet is not served, whatever lies in the folder.
-  mkdirSync(join(folder, 'family', 'es'), { recursive: true });
-  writeFileSync(join(folder, 'family', 'es', 'index.html'), 'es');
+  for (const root of [join(folder, 'family', 'my'), join(folder, 'clinic', 'ar')]) {
+    mkdirSync(root, { recursive: true });
+    writeFileSync(join(root, 'index.html'), 'not yet');
+  }
+  // Staff works in two languages.
+  mkdirSync(join(folder, 'clinic', 'es'), { recursive: true });
+  writeFileSync(join(folder, 'clinic', 'es', 'index.html'), '<title>clínica</title>');
   server = await startTestServer({ settings: { distDir: folder } });
 });
 afterAll(async () => {
@@ -110,6 +117,18 @@ describe('files', () => {
     expect((await get('/clinic/').expect(302)).headers['location']).toBe('/clinic/en/');
   });
 
+  it('open the clinic’s side in the language of the browser, where staff has it', async () => {
+    expect((await get('/clinic/es/this-morning').expect(200)).text).toContain('clínica');
+    for (const [wanted, path] of [
+      ['es-MX,es;q=0.9', '/clinic/es/'],
+      ['ar', '/clinic/en/'],
+    ] as const) {
+      const answer = await get('/clinic').set('Accept-Language', wanted).expect(302);
+      expect(answer.headers['location']).toBe(path);
+      expect(answer.headers['vary']).toContain('Accept-Language');
+    }
+  });
+
   it.each([
     '/en/../secret.txt',
     '/en/..%2f..%2fsecret.txt',
@@ -126,9 +145,34 @@ describe('files', () => {
   });
 
   it('in languages that are not offered are not there', async () => {
-    await get('/es/').expect(404);
+    await get('/my/').expect(404);
     await get('/xx/').expect(404);
-    await get('/clinic/es/').expect(404);
+    await get('/clinic/ar/').expect(404);
+  });
+
+  it('outlast readers who leave while a page loads', async () => {
+    const failures: unknown[] = [];
+    const note = (failure: unknown): unknown => failures.push(failure);
+    process.on('unhandledRejection', note);
+    const listening = server.app.listen(0, '127.0.0.1');
+    try {
+      await once(listening, 'listening');
+      const { port } = listening.address() as AddressInfo;
+      for (let reader = 0; reader < 40; reader += 1) {
+        const socket = connect(port, '127.0.0.1');
+        await once(socket, 'connect');
+        socket.write('GET /clinic/en/main-AbC_1234.js HTTP/1.1\r\nHost: localhost\r\n\r\n', () =>
+          socket.destroy(),
+        );
+        await once(socket, 'close');
+      }
+      const there = await request(listening).get('/clinic/en/').expect(200);
+      expect(there.text).toContain('clinic');
+      expect(failures).toEqual([]);
+    } finally {
+      process.off('unhandledRejection', note);
+      listening.close();
+    }
   });
 
   it('are only read', async () => {
@@ -140,7 +184,7 @@ describe('pages without script', () => {
   it('the first page offers the built languages, each in its own name', async () => {
     const answer = await get('/').expect(200);
     expect(answer.text).toContain('<a href="/en/" lang="en-US"');
-    expect(answer.text).not.toContain('/es/');
+    expect(answer.text).not.toContain('/my/');
     expect(answer.text).not.toMatch(/<script|tubercul/i);
   });
 

@@ -46,6 +46,8 @@ export interface TestServer {
 export interface TestServerOptions {
   readonly settings?: Partial<Settings>;
   readonly printer?: Printer;
+  /** Connections to the database; few of them show who waits for a second one while holding the first. */
+  readonly poolSize?: number;
 }
 
 const printerOfTests: Printer = {
@@ -73,7 +75,7 @@ export function testSettings(databaseUrl: string, more: Partial<Settings> = {}):
 export async function startTestServer(options: TestServerOptions = {}): Promise<TestServer> {
   const database = await migratedTestDatabase();
   const settings = testSettings(database.url, options.settings);
-  const db = connect(database.url, { poolSize: 8 });
+  const db = connect(database.url, { poolSize: options.poolSize ?? 8 });
   initModels(db);
   let moved: number | null = null;
   const context: Context = {

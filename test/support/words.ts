@@ -1,6 +1,7 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { IntlMessageFormat } from 'intl-messageformat';
+import { isClinicLanguage } from '../../shared/languages/clinic-languages';
 import { familyTime } from '../../shared/languages/family-time';
 import { isLanguageId, type LanguageId } from '../../shared/languages/languages';
 import { profileOf } from '../../shared/languages/profiles';
@@ -35,12 +36,11 @@ export const shippedLanguages: readonly LanguageId[] = readdirSync(
 
 /** Only staff reads these files: a language in which only families read need not have them. */
 const clinicFiles = ['calls.json', 'letters-clinic.json', 'staff.json'];
-const clinicLanguages: readonly LanguageId[] = ['en', 'es'];
 
 /** The keys that a language must have. */
 export function keysOwedIn(language: LanguageId): string[] {
   const all = Object.keys(shippedWords('en'));
-  if (clinicLanguages.includes(language)) return all;
+  if (isClinicLanguage(language)) return all;
   const forStaff = new Set(
     clinicFiles.flatMap((file) => {
       const path = join(__dirname, '../../locales/messages/en', file);

@@ -5,6 +5,7 @@ import { filter, pairwise } from 'rxjs';
 import type { Right } from '../../../shared/access/rights';
 import { ClinicUser } from '../../common/session/clinic-user';
 import { SchemeSwitch } from '../../common/ui/scheme-switch/scheme-switch';
+import { LanguageSwitch } from './language-switch';
 
 interface ScreenWord {
   readonly path: string;
@@ -41,7 +42,7 @@ const words: readonly ScreenWord[] = [
 /** The frame of the clinic's side: one line of words over a horizon, the current one with a sun on it. */
 @Component({
   selector: 'td-root',
-  imports: [RouterLink, RouterLinkActive, RouterOutlet, SchemeSwitch],
+  imports: [LanguageSwitch, RouterLink, RouterLinkActive, RouterOutlet, SchemeSwitch],
   templateUrl: './app.html',
   styleUrl: './app.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

@@ -40,6 +40,19 @@ const dayWithYear = (day: string): string =>
     () => new Intl.DateTimeFormat($localize.locale ?? 'en', { timeZone: 'UTC', dateStyle: 'long' }),
   ).format(new Date(`${day}T12:00:00Z`));
 
+/** 'Tuesday, April 6' of a calendar day, for a heading. */
+export const longDay = (day: string): string =>
+  format(
+    'long',
+    () =>
+      new Intl.DateTimeFormat($localize.locale ?? 'en', {
+        timeZone: 'UTC',
+        weekday: 'long',
+        month: 'long',
+        day: 'numeric',
+      }),
+  ).format(new Date(`${day}T12:00:00Z`));
+
 @Pipe({ name: 'tdClock' })
 export class ClockPipe implements PipeTransform {
   transform(at: string | null | undefined, zone: string): string {

@@ -35,12 +35,12 @@ const phone = {
 };
 
 export const test = base.extend<Fixtures>({
-  house: async ({}, use) => {
+  house: async ({ browserName: _ }, use) => {
     const house = await House.open();
     await use(house);
     await house.close();
   },
-  clean: async ({}, use) => {
+  clean: async ({ browserName: _ }, use) => {
     const clean = new CleanConsole();
     await use(clean);
     expect(clean.complaints, 'the consoles of all pages').toEqual([]);

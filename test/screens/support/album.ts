@@ -11,12 +11,16 @@ export interface Screen {
   readonly name: string;
   /** From the origin. */
   readonly address: (language: string) => string;
+  /** What has to have happened in the house before the page is opened in this language. */
+  readonly before?: (language: string) => Promise<unknown>;
   /** Opens a form or takes a step after the page stands; must work in every language. */
   readonly prepare?: (page: Page) => Promise<void>;
   /** Set when the state is one of waiting, so that nothing is waited for. */
   readonly isWaiting?: boolean;
   readonly views?: (views: readonly View[]) => readonly View[];
   readonly media?: 'print';
+  /** With the few colours that the reader's system has. */
+  readonly hasForcedColors?: boolean;
 }
 
 interface Pages {
@@ -104,11 +108,20 @@ export class Album {
     const page = view.width < 1000 ? this.pages.hand : this.pages.desk;
     const { width, height, language, scheme } = view;
     await page.setViewportSize({ width, height });
-    await page.emulateMedia({ colorScheme: scheme, media: 'screen', reducedMotion: 'reduce' });
+    await page.emulateMedia({
+      colorScheme: scheme,
+      media: 'screen',
+      reducedMotion: 'reduce',
+      forcedColors: screen.hasForcedColors ? 'active' : 'none',
+    });
     await this.speak(language);
+    await screen.before?.(language);
     await page.goto(screen.address(language), { waitUntil: 'commit' });
     await page.locator('h1, .skeleton, .waiting').first().waitFor();
     if (!screen.isWaiting) await settled(page);
+    // The family's pages hold no line open: they have everything when nothing is on its way.
+    if (!screen.isWaiting && !page.url().includes('/clinic/'))
+      await page.waitForLoadState('networkidle');
     await screen.prepare?.(page);
     if (!screen.isWaiting) await settled(page);
     if (screen.media) await page.emulateMedia({ media: screen.media, colorScheme: 'light' });

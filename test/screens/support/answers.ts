@@ -9,8 +9,12 @@ export function altered(
   change: (body: Json) => Json,
 ): Promise<unknown> {
   return context.route(address, async (route: Route) => {
-    const response = await route.fetch();
-    await route.fulfill({ response, json: change((await response.json()) as Json) });
+    try {
+      const response = await route.fetch();
+      await route.fulfill({ response, json: change((await response.json()) as Json) });
+    } catch {
+      // The page that asked has gone on to another address.
+    }
   });
 }
 

@@ -6,8 +6,9 @@ import { addDays } from '../../../shared/domain/zone';
 import type { House, Who } from '../../e2e/support/house';
 import type { Screen } from './album';
 
+export const clinicGroups = ['door', 'work', 'children', 'laboratory', 'letters', 'house'] as const;
+
 export interface ClinicGroup {
-  readonly group: string;
   /** Whose screen it is; nobody's when it stands before the sign-in. */
   readonly who: Who | null;
   readonly screens: readonly Screen[];
@@ -18,8 +19,11 @@ const at =
   (language: string): string =>
     `/clinic/${language}/${path}`;
 
-/** The screens of the clinic that need no morning to run. */
-export async function clinicScreens(house: House): Promise<readonly ClinicGroup[]> {
+/** Screens of the clinic that need no morning to run. */
+export async function clinicGroup(
+  house: House,
+  group: (typeof clinicGroups)[number],
+): Promise<ClinicGroup> {
   const { children } = await house.get<ChildList>('/api/clinic/children');
   const { orders } = await house.get<OrderList>('/api/clinic/orders');
   const { letters } = await house.get<LetterList>('/api/clinic/letters');
@@ -30,9 +34,8 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
   let sunday = await house.today();
   while (weekdayOf(sunday) !== 7) sunday = addDays(sunday, 1);
   const plan = at(`series/plan?orders=${toPlan?.id}`);
-  return [
-    {
-      group: 'clinic-door',
+  const groups: Record<typeof group, ClinicGroup> = {
+    door: {
       who: null,
       screens: [
         { name: 'sign-in', address: at('sign-in') },
@@ -44,8 +47,7 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         { name: 'not-found', address: at('nowhere') },
       ],
     },
-    {
-      group: 'clinic-work',
+    work: {
       who: 'rosa',
       screens: [
         { name: 'this-morning-empty', address: at(`this-morning?on=${sunday}`) },
@@ -56,8 +58,7 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         { name: 'order-to-plan', address: at(`orders/${toPlan?.id}`) },
       ],
     },
-    {
-      group: 'clinic-children',
+    children: {
       who: 'rosa',
       screens: [
         { name: 'children', address: at('children') },
@@ -65,7 +66,7 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         {
           name: 'child-new-nothing-typed',
           address: at('children/new'),
-          prepare: (page) => page.locator('form button[type="submit"]').last().click(),
+          prepare: (page) => page.locator('form .buttons .first').click(),
         },
         { name: 'record', address: at(`children/${child?.id}`) },
         { name: 'plan', address: plan },
@@ -79,8 +80,7 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         },
       ],
     },
-    {
-      group: 'clinic-laboratory',
+    laboratory: {
       who: 'rosa',
       screens: [
         { name: 'specimens', address: at('specimens') },
@@ -95,8 +95,7 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         },
       ],
     },
-    {
-      group: 'clinic-letters',
+    letters: {
       who: 'okafor',
       screens: [
         { name: 'letters', address: at('letters') },
@@ -106,8 +105,7 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         { name: 'access-record', address: at('access-record') },
       ],
     },
-    {
-      group: 'clinic-house',
+    house: {
       who: 'milan',
       screens: [
         { name: 'set-up', address: at('set-up') },
@@ -115,5 +113,6 @@ export async function clinicScreens(house: House): Promise<readonly ClinicGroup[
         { name: 'rehearsal', address: at('rehearsal') },
       ],
     },
-  ];
+  };
+  return groups[group];
 }

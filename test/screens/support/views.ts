@@ -39,6 +39,6 @@ export function viewsOf(number: number, languages: readonly string[]): readonly 
     width,
     height,
     language: languages[(index + number) % languages.length] ?? 'en',
-    scheme: schemes[(index + turn + (languages.length === 1 ? number : 0)) % 2] ?? 'light',
+    scheme: schemes[(index + turn) % 2] ?? 'light',
   }));
 }

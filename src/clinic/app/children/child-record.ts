@@ -19,13 +19,14 @@ import { SeriesClient } from '../../../common/api/clinic/series-client';
 import { ClinicUser } from '../../../common/session/clinic-user';
 import { DayPipe, MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
+import { PhonePipe } from '../../../common/ui/phone-words';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
 import { cautionSays, feedingSays } from './child-words';
 
 /** One child: family, orders, series, and everything that happened in one column of time. */
 @Component({
   selector: 'td-child-record',
-  imports: [RouterLink, SheetStates, DayPipe, MomentPipe],
+  imports: [RouterLink, SheetStates, DayPipe, MomentPipe, PhonePipe],
   templateUrl: './child-record.html',
   styleUrl: './child-record.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

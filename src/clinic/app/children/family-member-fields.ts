@@ -7,6 +7,7 @@ import { MatSelectModule } from '@angular/material/select';
 import { languages } from '../../../../shared/languages/languages';
 import { faultOf } from '../../../common/ui/form/form-faults';
 import type { FamilyMemberGroup } from './family-member-form';
+import { LanguageNamePipe } from '../../../common/ui/language-name';
 
 /** One adult of the family: who, how reached, in which language, and what this person agreed to. */
 @Component({
@@ -17,6 +18,7 @@ import type { FamilyMemberGroup } from './family-member-form';
     MatFormFieldModule,
     MatInputModule,
     MatSelectModule,
+    LanguageNamePipe,
   ],
   templateUrl: './family-member-fields.html',
   styleUrl: '../../../common/ui/form/fields.scss',

@@ -22,6 +22,7 @@ import type { ClinicFailure } from '../../../common/api/clinic/clinic-http';
 import { ClinicClock } from '../../../common/session/clinic-clock';
 import { faultOf, issuesByPath, showFaults } from '../../../common/ui/form/form-faults';
 import { formFieldLook } from '../../../common/ui/form/form-field-look';
+import { LanguageNamePipe } from '../../../common/ui/language-name';
 
 const control = <Value>(value: Value): FormControl<Value> =>
   new FormControl(value, { nonNullable: true });
@@ -35,6 +36,7 @@ const control = <Value>(value: Value): FormControl<Value> =>
     MatFormFieldModule,
     MatInputModule,
     MatSelectModule,
+    LanguageNamePipe,
   ],
   templateUrl: './consent-form.html',
   styleUrl: '../../../common/ui/form/fields.scss',

@@ -59,7 +59,14 @@ export class Orders {
 
   protected readonly zone = inject(ClinicUser).zone;
   protected readonly loaded = new Loaded(() => this.client.orders());
-  protected readonly orders = computed(() => this.loaded.value()?.orders ?? []);
+  /** What waits for somebody stands first; within that the order of the answer. */
+  protected readonly orders = computed(() => {
+    const orders = this.loaded.value()?.orders ?? [];
+    return [
+      ...orders.filter(({ seriesId }) => !seriesId),
+      ...orders.filter(({ seriesId }) => seriesId),
+    ];
+  });
 
   constructor() {
     void this.loaded.again();

@@ -7,6 +7,7 @@ import { ClinicUser } from '../../../common/session/clinic-user';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
 import { roleSays, roleWords } from './role-words';
+import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 /** Staff accounts and their roles. */
 @Component({
@@ -56,7 +57,9 @@ export class People {
     });
     if (!parsed.success) {
       this.faults.set(
-        new Map(parsed.error.issues.map(({ path, message }) => [path.join('.'), message])),
+        new Map(
+          parsed.error.issues.map(({ path, message }) => [path.join('.'), schemaSentence(message)]),
+        ),
       );
       return;
     }

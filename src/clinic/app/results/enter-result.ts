@@ -20,6 +20,7 @@ import type { ClinicFailure } from '../../../common/api/clinic/clinic-http';
 import { ClinicClock } from '../../../common/session/clinic-clock';
 import { ClinicUser } from '../../../common/session/clinic-user';
 import { answersOf, testWords } from './result-words';
+import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 /** One answer from the laboratory's report: the schema decides, each fault stands beside its field. */
 @Component({
@@ -73,7 +74,10 @@ export class EnterResult {
       const says = parsed.error.issues.map(({ path, message }): [string, string] => {
         const field = path.join('.');
         const isChoice = field === 'value' || field === 'finality';
-        return [field, isChoice ? $localize`:@@clinic.results.choose:Choose one.` : message];
+        return [
+          field,
+          isChoice ? $localize`:@@clinic.results.choose:Choose one.` : schemaSentence(message),
+        ];
       });
       this.faults.set(new Map(says));
       return;

@@ -4,6 +4,7 @@ import { RouterLink } from '@angular/router';
 import { acceptStaffInvitationRequest } from '../../../../shared/contracts/clinic-session';
 import { clinicFailure } from '../../../common/api/clinic/clinic-http';
 import { ClinicSessionClient } from '../../../common/api/clinic/clinic-session-client';
+import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 /** A new member of staff chooses a password; the link works once. */
 @Component({
@@ -27,7 +28,7 @@ export class Join {
     const request = { token: this.token(), ...this.form.getRawValue() };
     const parsed = acceptStaffInvitationRequest.safeParse(request);
     if (!parsed.success) {
-      this.says.set(parsed.error.issues[0]?.message ?? null);
+      this.says.set(schemaSentence(parsed.error.issues[0]?.message ?? ''));
       return;
     }
     this.isBusy.set(true);

@@ -12,6 +12,7 @@ import { Router } from '@angular/router';
 import { signInRequest } from '../../../../shared/contracts/clinic-session';
 import { clinicFailure } from '../../../common/api/clinic/clinic-http';
 import { ClinicUser } from '../../../common/session/clinic-user';
+import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 @Component({
   selector: 'td-sign-in',
@@ -37,7 +38,7 @@ export class SignIn {
     const parsed = signInRequest.safeParse(this.form.getRawValue());
     if (!parsed.success) {
       const found = parsed.error.issues.map(
-        (issue) => [issue.path.join('.'), issue.message] as const,
+        (issue) => [issue.path.join('.'), schemaSentence(issue.message)] as const,
       );
       this.show($localize`:@@clinic.sign-in.check:Check what you filled in.`, new Map(found));
       return;

@@ -38,6 +38,9 @@ import { ShortForm, type ShortAsk } from './short-form';
 
 type OpenForm = 'door-check' | 'collected' | ShortAsk;
 
+/** So many answers of a family stand in its row; those before are folded. */
+const shownAnswers = 2;
+
 /** One row, one child: where it is, what the family said, how the fast stands, and the next step. */
 @Component({
   // eslint-disable-next-line @angular-eslint/component-selector -- a list item stays a list item
@@ -83,6 +86,9 @@ export class ChildRow {
   protected readonly verdict = computed(() => verdictWords(this.row(), this.now()));
   protected readonly fasted = computed(() => fastedWords(this.row(), this.now(), this.zone()));
   protected readonly barSays = computed(() => barWords(this.row(), this.zone()));
+  /** What was said last decides; a family that corrects itself often must not push the others off the screen. */
+  protected readonly saidLast = computed(() => this.row().said.slice(-shownAnswers));
+  protected readonly saidBefore = computed(() => this.row().said.slice(0, -shownAnswers));
   protected readonly stops = computed(() => stopWords(this.row(), this.now()));
   protected readonly isLate = computed(() => minutesLate(this.row()) > 0);
   protected readonly isDone = computed(() =>

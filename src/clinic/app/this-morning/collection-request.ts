@@ -4,6 +4,7 @@ import {
 } from '../../../../shared/contracts/this-morning';
 import type { Instant } from '../../../../shared/domain/zone';
 import { doorTime } from './door-time';
+import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 /** What the form holds, as typed. */
 export interface CollectionValues {
@@ -88,7 +89,10 @@ export function collectionRequestOf(
   if (parsed.success) return { request: parsed.data };
   return {
     faults: Object.fromEntries(
-      parsed.error.issues.map((issue) => [collectionFieldOf(String(issue.path[0])), issue.message]),
+      parsed.error.issues.map((issue) => [
+        collectionFieldOf(String(issue.path[0])),
+        schemaSentence(issue.message),
+      ]),
     ),
   };
 }

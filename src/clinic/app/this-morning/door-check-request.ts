@@ -2,6 +2,7 @@ import type { MorningRow } from '../../../../shared/contracts/this-morning';
 import { doorCheckRequest, type DoorCheckRequest } from '../../../../shared/contracts/this-morning';
 import type { Instant } from '../../../../shared/domain/zone';
 import { doorTime, fieldTime } from './door-time';
+import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 export type TimeField = 'lastFood' | 'lastDrink' | 'woke';
 export type Reading = 'earlier' | 'later';
@@ -109,7 +110,10 @@ export function doorCheckRequestOf(
   if (parsed.success) return { request: parsed.data };
   return {
     faults: Object.fromEntries(
-      parsed.error.issues.map((issue) => [fieldOf(String(issue.path[0])), issue.message]),
+      parsed.error.issues.map((issue) => [
+        fieldOf(String(issue.path[0])),
+        schemaSentence(issue.message),
+      ]),
     ),
   };
 }

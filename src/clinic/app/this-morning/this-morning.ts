@@ -8,13 +8,12 @@ import {
   input,
   viewChildren,
 } from '@angular/core';
-import { formatDate } from '@angular/common';
 import { RouterLink } from '@angular/router';
 import type { MorningRow } from '../../../../shared/contracts/this-morning';
 import { isDay } from '../../../../shared/domain/day';
 import { ClinicClock } from '../../../common/session/clinic-clock';
 import { ClinicUser } from '../../../common/session/clinic-user';
-import { ClockPipe, DayPipe, clockIn } from '../../../common/ui/clinic-times';
+import { ClockPipe, DayPipe, clockIn, longDay } from '../../../common/ui/clinic-times';
 import { RoomLane } from '../../../common/ui/room-lane/room-lane';
 import { Ruler } from '../../../common/ui/ruler/ruler';
 import { isOnRuler, minuteOn, rulerOf } from '../../../common/ui/ruler/ruler-scale';
@@ -68,7 +67,7 @@ export class ThisMorning {
   /** 'Tuesday, April 6' */
   protected readonly heading = computed(() => {
     const on = this.sheet()?.on;
-    return on === undefined ? '' : formatDate(on, 'EEEE, MMMM d', $localize.locale ?? 'en');
+    return on === undefined ? '' : longDay(on);
   });
   /** Minutes on the ruler; null when now lies on another day. */
   protected readonly nowMinute = computed(() => {

@@ -1,5 +1,5 @@
 import { HttpClient, HttpErrorResponse } from '@angular/common/http';
-import { Injectable, inject } from '@angular/core';
+import { Injectable, LOCALE_ID, inject } from '@angular/core';
 import { firstValueFrom, timeout, type Observable } from 'rxjs';
 import type { z } from 'zod';
 import { problem, type ProblemDocument } from '../../../../shared/contracts/problem';
@@ -39,9 +39,11 @@ export function clinicFailure(error: unknown): ClinicFailure {
 @Injectable({ providedIn: 'root' })
 export class ClinicHttp {
   private readonly http = inject(HttpClient);
+  /** The server answers in the language of this screen, whatever the browser prefers. */
+  private readonly options = { headers: { 'Accept-Language': inject(LOCALE_ID) } };
 
   get<Schema extends z.ZodType>(path: string, answer: Schema): Promise<z.output<Schema>> {
-    return this.read(this.http.get(`/api/clinic${path}`), answer);
+    return this.read(this.http.get(`/api/clinic${path}`, this.options), answer);
   }
 
   post<Schema extends z.ZodType>(
@@ -49,7 +51,7 @@ export class ClinicHttp {
     body: object,
     answer: Schema,
   ): Promise<z.output<Schema>> {
-    return this.read(this.http.post(`/api/clinic${path}`, body), answer);
+    return this.read(this.http.post(`/api/clinic${path}`, body, this.options), answer);
   }
 
   put<Schema extends z.ZodType>(
@@ -57,12 +59,14 @@ export class ClinicHttp {
     body: object,
     answer: Schema,
   ): Promise<z.output<Schema>> {
-    return this.read(this.http.put(`/api/clinic${path}`, body), answer);
+    return this.read(this.http.put(`/api/clinic${path}`, body, this.options), answer);
   }
 
   async delete(path: string): Promise<void> {
     try {
-      await firstValueFrom(this.http.delete(`/api/clinic${path}`).pipe(timeout(waitMs)));
+      await firstValueFrom(
+        this.http.delete(`/api/clinic${path}`, this.options).pipe(timeout(waitMs)),
+      );
     } catch (error) {
       throw clinicFailure(error);
     }

@@ -1,4 +1,5 @@
 import type { AbstractControl, FormGroup } from '@angular/forms';
+import { schemaSentence } from './schema-sentences';
 
 /**
  * Puts each sentence beside its field, by dotted path ('familyMembers.0.phone').
@@ -28,4 +29,4 @@ interface Issue {
 
 /** Sentences of a schema that refused a form. */
 export const issuesByPath = (issues: readonly Issue[]): Map<string, string> =>
-  new Map(issues.map((issue) => [issue.path.map(String).join('.'), issue.message]));
+  new Map(issues.map((issue) => [issue.path.map(String).join('.'), schemaSentence(issue.message)]));
