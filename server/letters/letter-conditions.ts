@@ -12,9 +12,16 @@ interface ConditionsRequest {
   readonly wording: Wording;
 }
 
-/** Whether the clinician's choice about the medicines is complete: a start or a decision needs its day. */
-function areMedicinesStated({ medicines, medicinesOn }: Choices, today: string): boolean {
-  if (medicines === null) return false;
+/**
+ * Whether the clinician's choice about the medicines is complete: a start or a decision needs its day, and a letter that
+ * says that the child has tuberculosis cannot say that no medicine is needed.
+ */
+function areMedicinesStated(
+  { medicines, medicinesOn }: Choices,
+  today: string,
+  isPositive: boolean,
+): boolean {
+  if (medicines === null || (isPositive && medicines === 'none-now')) return false;
   if (medicines === 'keep-giving' || medicines === 'none-now') return true;
   return medicinesOn !== null && medicinesOn >= today;
 }
@@ -31,7 +38,7 @@ export function letterConditions(request: ConditionsRequest): LetterDesk['condit
     'call-about-positive': () => one.hasToldDanger,
     'call-about-critical': () => one.hasToldDanger,
     'second-look': () => !one.series.hasOpenSecondLook,
-    'medicines-stated': () => areMedicinesStated(choices, today),
+    'medicines-stated': () => areMedicinesStated(choices, today, one.choice.positive),
     'next-visit-set': () => choices.nextVisitAt !== null && Date.parse(choices.nextVisitAt) > now,
     'decide-on-missing-morning': () => false,
     'reason-for-closing-early': () => one.series.closeReason !== null,

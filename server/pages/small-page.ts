@@ -41,7 +41,7 @@ ul{margin:1.25rem 0;padding-inline-start:1.25rem}li{margin-block:.75rem}li::mark
 .choices a:focus-visible{outline:3px solid var(--ink);outline-offset:3px}
 .urgent{border:2px solid var(--danger);border-radius:1rem;padding:.75rem 1.25rem;background:var(--danger-soft);font-weight:700}
 .soft{color:var(--soft);font-size:1rem}
-@media print{.sky{display:none}main{padding:0}.urgent{background:none}}
+@media print{:root{--paper:#fff}.sky{display:none}main{padding:0}.urgent{background:none}}
 </style>
 </head>
 <body>

@@ -61,7 +61,7 @@ test('the screens behind the menu', async ({ house, people }) => {
   const family = await prepareFamily(house, {
     fullName: 'Sanna Reyes',
     callMe: 'Sanna',
-    phone: '+13125550188',
+    phone: '+13125550145',
   });
   const okafor = await people.staff('okafor');
   const check = async (address: string, prepare?: () => Promise<void>): Promise<void> => {

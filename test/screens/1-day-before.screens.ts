@@ -17,6 +17,13 @@ const family = languagesOf('family');
 const home = (language: string): string => `/${language}/`;
 const clinic = languagesOf('clinic');
 
+/** By day, so that what was queued for the families has gone out. */
+async function awakeHouse(): Promise<House> {
+  const house = await House.open();
+  await house.awake();
+  return house;
+}
+
 test('the views meet every pair of width, language and scheme', () => {
   for (const languages of [family, clinic]) {
     const views = Array.from({ length: languages.length * 2 }, (_, number) =>
@@ -44,8 +51,7 @@ test('public pages', async ({ browser }) => {
 });
 
 test('a family arrives', async ({ browser }) => {
-  const house = await House.open();
-  await house.awake();
+  const house = await awakeHouse();
   const link = await linkOf(house.standIns, salma.phone, 'i');
   const speak = (language: string): Promise<void> => readIn(salma.phone, language);
   await Album.fill(browser, { group: 'family-arrive', languages: family, speak }, async (album) => {
@@ -77,7 +83,7 @@ test('a family arrives', async ({ browser }) => {
 });
 
 test('the night before, two children', async ({ browser }) => {
-  const house = await House.open();
+  const house = await awakeHouse();
   const voice = await FamilyVoice.open();
   await voice.openLink(await linkOf(house.standIns, parwin.phone, 'i'), parwin.child);
   const speak = (language: string): Promise<void> => readIn(parwin.phone, language);
@@ -115,7 +121,7 @@ test('the night before, two children', async ({ browser }) => {
 });
 
 test('a family before anything is planned', async ({ browser }) => {
-  const house = await House.open();
+  const house = await awakeHouse();
   const voice = await FamilyVoice.open();
   await voice.signInByCode(house.standIns, ines);
   await Album.fill(
@@ -136,7 +142,7 @@ test('a family before anything is planned', async ({ browser }) => {
 });
 
 test('the night before, one child', async ({ browser }) => {
-  const house = await House.open();
+  const house = await awakeHouse();
   const voice = await FamilyVoice.open();
   await voice.openLink(await linkOf(house.standIns, salma.phone, 'i'), salma.child);
   await Album.fill(
@@ -158,7 +164,7 @@ test('the night before, one child', async ({ browser }) => {
 
 for (const group of clinicGroups)
   test(`the clinic on the day before: ${group}`, async ({ browser, people }) => {
-    const house = await House.open();
+    const house = await awakeHouse();
     const { who, screens } = await clinicGroup(house, group);
     const cookies = who === null ? undefined : await (await people.staff(who)).context().cookies();
     await Album.fill(
@@ -208,7 +214,7 @@ test('the clinic with nothing in it, with a fault, and while it waits', async ({
 });
 
 test('a letter, at the desk and on the phone', async ({ browser, people }) => {
-  const house = await House.open();
+  const house = await awakeHouse();
   const okafor = await people.staff('okafor');
   await toScreen(okafor, 'Letters');
   const desk = new LetterDesk(okafor);

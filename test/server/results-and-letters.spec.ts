@@ -412,6 +412,13 @@ describe('the letter', () => {
       .post(`/api/clinic/results/${result?.id ?? 0}/second-look`)
       .send({})
       .expect(200);
+    const contradiction = await sign({
+      choices: { ...choices, medicines: 'none-now' },
+      release: true,
+      resultsSeen: await resultsSeen(),
+      password: staffPassword,
+    });
+    expect(contradiction.body.errors).toEqual([expect.objectContaining({ path: 'medicines' })]);
     await sign({
       choices,
       release: true,

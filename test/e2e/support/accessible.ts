@@ -14,11 +14,24 @@ export async function settled(page: Page): Promise<void> {
   await expect(page.locator('.waiting, .skeleton, mat-spinner')).toHaveCount(0);
 }
 
+/** Colours glide from day to night: waits until nothing moves any more. */
+async function atRest(page: Page): Promise<void> {
+  await page.evaluate(async () => {
+    // One frame, so that what has just changed has begun to glide.
+    await new Promise((done) => requestAnimationFrame(done));
+    const ending = document
+      .getAnimations()
+      .filter(({ effect }) => effect?.getComputedTiming().iterations !== Infinity);
+    await Promise.allSettled(ending.map(({ finished }) => finished));
+  });
+}
+
 /** Fails with the rule and the place of everything that stands in somebody's way, by day and by night. */
 export async function expectAccessible(page: Page, screen: string): Promise<void> {
   await settled(page);
   const check = async (colorScheme: 'light' | 'dark'): Promise<void> => {
     await page.emulateMedia({ colorScheme, reducedMotion: 'reduce' });
+    await atRest(page);
     const axe = new AxeBuilder({ page }).options({ resultTypes: ['violations'] }).setLegacyMode();
     const judged = colorScheme === 'light' ? axe.withTags(rules) : axe.withRules(colourRules);
     const { violations } = await judged.exclude(repeatedRows).analyze();

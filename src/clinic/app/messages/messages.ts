@@ -2,17 +2,19 @@ import { ChangeDetectionStrategy, Component, computed, inject, input } from '@an
 import { takeUntilDestroyed } from '@angular/core/rxjs-interop';
 import { Router } from '@angular/router';
 import { debounceTime, filter } from 'rxjs';
+import { isLanguageId, languageOf } from '../../../../shared/languages/languages';
 import { HouseClient } from '../../../common/api/clinic/house-client';
 import { LiveClient } from '../../../common/api/clinic/live-client';
 import { ClinicUser } from '../../../common/session/clinic-user';
 import { MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
+import { PhonePipe } from '../../../common/ui/phone-words';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
 
 /** What goes out to whom, in which exact words, and how far it has come. */
 @Component({
   selector: 'td-messages',
-  imports: [SheetStates, MomentPipe],
+  imports: [SheetStates, MomentPipe, PhonePipe],
   templateUrl: './messages.html',
   styleUrl: './messages.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -52,6 +54,11 @@ export class Messages {
 
   protected choose(show: string): void {
     void this.router.navigate([], { queryParams: { show: show === 'all' ? null : show } });
+  }
+
+  /** A text may begin with the clinic's name in other letters: its direction is that of its language. */
+  protected dirOf(language: string): 'ltr' | 'rtl' {
+    return isLanguageId(language) ? languageOf(language).dir : 'ltr';
   }
 
   protected isTrouble(state: string): boolean {

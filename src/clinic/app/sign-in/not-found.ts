@@ -5,7 +5,7 @@ import { RouterLink } from '@angular/router';
   selector: 'td-not-found',
   imports: [RouterLink],
   template: `
-    <svg class="dawn" viewBox="0 0 240 90" aria-hidden="true">
+    <svg class="dawn" viewBox="0 0 240 100" aria-hidden="true">
       <circle class="sun-done" cx="40" cy="62" r="14" />
       <circle class="sun-later" cx="100" cy="76" r="20" />
       <path class="sun-next" d="M146 76a34 34 0 0 1 68 0Z" />

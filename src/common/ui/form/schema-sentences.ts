@@ -18,6 +18,8 @@ const sentences: Readonly<Record<string, string>> = {
   'Between 0.5 and 120 kg.': $localize`:@@clinic.schema.weight:Between 0.5 and 120 kg.`,
   'Between 0.1 and 100 mL.': $localize`:@@clinic.schema.volume:Between 0.1 and 100 mL.`,
   'A consent by telephone needs a witness.': $localize`:@@clinic.schema.witness:A consent by telephone needs a witness.`,
+  'This goes into texts, so it must not be the name. For example “Baby” or “Big girl”.': $localize`:@@clinic.schema.label:This goes into texts, so it must not be the name. For example “Baby” or “Big girl”.`,
+  'This holds signs that nobody can see. Write it again.': $localize`:@@clinic.schema.unseen:This holds signs that nobody can see. Write it again.`,
 };
 
 const tooLong = /^At most (\d+) characters\.$/;
