@@ -23,7 +23,12 @@ export interface PreparedFamily {
 /** A child with a mother who may be texted at any hour; order signed, consent given. Made without a screen. */
 export async function prepareFamily(
   house: House,
-  { fullName, callMe, phone }: { fullName: string; callMe: string; phone: string },
+  {
+    fullName,
+    callMe,
+    phone,
+    language = 'en',
+  }: { fullName: string; callMe: string; phone: string; language?: string },
 ): Promise<PreparedFamily> {
   const bornOn = addDays(await house.today(), -800);
   const request: AddChildRequest = {
@@ -42,7 +47,7 @@ export async function prepareFamily(
         mayConsent: true,
         seesResults: true,
         phone,
-        readsLanguage: 'en',
+        readsLanguage: language,
         readsHow: 'well',
         speaksLanguage: 'English',
         needsInterpreter: false,
@@ -154,6 +159,6 @@ export async function toMorningQuestion(
 ): Promise<string> {
   await house.moveTo(instantOf({ on: addDays(on, -1), time: '19:00', zone }));
   await house.moveTo(arrivalAt - 85 * 60_000);
-  const { body } = await house.standIns.text(phone, /1 = nothing/);
+  const { body } = await house.standIns.text(phone, /\/m\//);
   return linkIn(body, 'm');
 }
