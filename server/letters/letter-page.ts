@@ -15,6 +15,9 @@ const lines = (text: string): string =>
     .map((line) => isolateNumbers(escapeHtml(line)))
     .join('<br>');
 
+/** A name or an address keeps its own direction inside a letter that runs the other way. */
+const apart = (text: string): string => `<bdi>${escapeHtml(text)}</bdi>`;
+
 /** The letter for paper: letterhead, address window, the paragraphs as signed. */
 export function letterPage({ body, language, recipient, letterhead }: LetterPage): string {
   const [name, ...rest] = letterhead;
@@ -26,9 +29,9 @@ export function letterPage({ body, language, recipient, letterhead }: LetterPage
     language,
     dir: languageOf(language as LanguageId).dir,
     title: body.title,
-    body: `<header><p><strong>${escapeHtml(name ?? '')}</strong><br>${rest.map(lines).join('<br>')}</p>
+    body: `<header><p><strong>${apart(name ?? '')}</strong><br>${rest.map(apart).join('<br>')}</p>
       <p>${escapeHtml(body.dateSays)}</p></header>
-      <div class="address"><p>${escapeHtml(recipient)}</p></div>
+      <div class="address"><p>${apart(recipient)}</p></div>
       <main><h1>${escapeHtml(body.title)}</h1>${paragraphs.join('')}</main>`,
   });
 }
