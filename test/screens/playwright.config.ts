@@ -6,6 +6,7 @@ import endToEnd from '../e2e/playwright.config';
 export default defineConfig({
   ...endToEnd,
   testDir: __dirname,
+  projects: [{ name: 'screens' }],
   // In the order of their names: the clock of the one house moves forward only.
   testMatch: '**/*.screens.ts',
   outputDir: join(__dirname, '..', '..', 'test-results', 'screens-failures'),

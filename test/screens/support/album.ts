@@ -100,7 +100,12 @@ export class Album {
     await desk.setViewportSize({ width: 1920, height: 1080 });
     await desk.emulateMedia({ colorScheme: 'light', media: 'screen' });
     await desk.goto(`file://${file}`);
-    await desk.screenshot({ path: join(folder, `${this.group}.png`), fullPage: true });
+    // The wording alone is a very long page.
+    await desk.screenshot({
+      path: join(folder, `${this.group}.png`),
+      fullPage: true,
+      timeout: 90_000,
+    });
     await this.both((context) => context.close());
   }
 
