@@ -65,16 +65,3 @@ export async function enqueue(
   );
   return touched === 1;
 }
-
-/** Takes a message back that has not been claimed yet. @returns how many were taken back (0 or 1). */
-export async function withdraw(
-  db: Sequelize,
-  transaction: Transaction,
-  dedupeKey: string,
-): Promise<number> {
-  const [result] = await db.query(
-    `UPDATE messages SET state = 'withdrawn' WHERE dedupe_key = :dedupeKey AND state = 'queued'`,
-    { replacements: { dedupeKey }, transaction },
-  );
-  return (result as { affectedRows?: number }).affectedRows ?? 0;
-}

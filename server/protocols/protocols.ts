@@ -56,17 +56,6 @@ const signedFrom = (table: string): string =>
 const inForce = `WHERE signed.site_id = :siteId AND signed.effective_on <= :on AND signed.signed_at IS NOT NULL
    ORDER BY signed.effective_on DESC, signed.version DESC LIMIT 1`;
 
-/** The protocol with this id, signed or not: a series keeps the one it was planned with. */
-export async function fastingProtocolOf(
-  db: Sequelize,
-  id: number,
-  transaction?: Transaction,
-): Promise<StoredProtocol> {
-  const [protocol] = await protocolsWhere(db, 'WHERE signed.id = :id', { id }, transaction);
-  if (!protocol) throw notFound('This fasting protocol');
-  return protocol;
-}
-
 export async function laboratoryProfileOf(
   db: Sequelize,
   id: number,

@@ -1,8 +1,6 @@
 import * as z from 'zod';
 import { day, id, instant, languageId, optionalText, shortText, version } from './common';
 
-const today = 'A date of the past, or today.';
-
 export const orderDetails = z.object({
   weightKg: z.number().min(0.5, 'Between 0.5 and 120 kg.').max(120, 'Between 0.5 and 120 kg.'),
   sourceCase: z.enum(['known', 'not-known']),
@@ -91,4 +89,3 @@ export const order = z.object({
 export type Order = z.infer<typeof order>;
 export const orderList = z.object({ orders: z.array(order) });
 export type OrderList = z.infer<typeof orderList>;
-export const orderMessages = { today };

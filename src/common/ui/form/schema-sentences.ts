@@ -14,7 +14,6 @@ const sentences: Readonly<Record<string, string>> = {
   'Choose at least one role.': $localize`:@@clinic.schema.role:Choose at least one role.`,
   'At least 15 characters. A short sentence works well.': $localize`:@@clinic.schema.password:At least 15 characters. A short sentence works well.`,
   'Enter your password to sign.': $localize`:@@clinic.schema.sign:Enter your password to sign.`,
-  'A date of the past, or today.': $localize`:@@clinic.schema.past:A date of the past, or today.`,
   'Between 0.5 and 120 kg.': $localize`:@@clinic.schema.weight:Between 0.5 and 120 kg.`,
   'Between 0.1 and 100 mL.': $localize`:@@clinic.schema.volume:Between 0.1 and 100 mL.`,
   'A consent by telephone needs a witness.': $localize`:@@clinic.schema.witness:A consent by telephone needs a witness.`,
