@@ -3,8 +3,8 @@ import { planMornings, prepareFamily, toMorningQuestion } from './support/prepar
 import { expect, test } from './support/walk';
 
 const families = [
-  { language: 'es', dir: 'ltr', fullName: 'Lucio Prado', callMe: 'Lucio', phone: '+13125550186' },
-  { language: 'ar', dir: 'rtl', fullName: 'Rami Sabbagh', callMe: 'Rami', phone: '+13125550187' },
+  { language: 'es', dir: 'ltr', fullName: 'Lucio Prado', callMe: 'Lucio', phone: '+13125550183' },
+  { language: 'ar', dir: 'rtl', fullName: 'Rami Sabbagh', callMe: 'Rami', phone: '+13125550184' },
 ] as const;
 
 for (const { dir, ...person } of families)

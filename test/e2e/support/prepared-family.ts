@@ -20,7 +20,10 @@ export interface PreparedFamily {
   readonly orderId: number;
 }
 
-/** A child with a mother who may be texted at any hour; order signed, consent given. Made without a screen. */
+/**
+ * A child with a mother who may be texted at any hour; order signed, consent given. Made without a
+ * screen. @throws when the number has had texts: two tests of one house must not share a family's.
+ */
 export async function prepareFamily(
   house: House,
   {
@@ -30,6 +33,9 @@ export async function prepareFamily(
     language = 'en',
   }: { fullName: string; callMe: string; phone: string; language?: string },
 ): Promise<PreparedFamily> {
+  if ((await house.standIns.texts(phone)).length > 0) {
+    throw new Error(`${phone} belongs to a family of an earlier test.`);
+  }
   const bornOn = addDays(await house.today(), -800);
   const request: AddChildRequest = {
     fullName,
