@@ -6,12 +6,18 @@ import { familySessionRoutes } from './auth/family-session-routes';
 import { clinicSessions, familySessions } from './auth/sessions';
 import { knowClinicLanguage, knowStaff, staffAuthenticator } from './auth/staff-sign-in';
 import { accessRecordRoutes } from './access-record/access-record-routes';
+import { alertRoutes } from './alerts/alert-routes';
 import { callRoutes } from './calls/call-routes';
 import { childrenRoutes } from './children/children-routes';
+import { closingRoutes } from './closing/closing-routes';
 import { collectionsRoutes } from './collections/collections-routes';
+import { individualPlansRoutes } from './individual-plans/individual-plans-routes';
+import { consentRoutes } from './messages/consent-routes';
+import { familyFeedRoutes, feedRoutes } from './messages/feed-routes';
 import { messageRoutes } from './messages/message-routes';
 import { ordersRoutes } from './orders/orders-routes';
 import { seriesRoutes } from './series/series-routes';
+import { setOutRoutes } from './set-out/set-out-routes';
 import { setUpRoutes } from './sites/set-up-routes';
 import type { Context } from './context';
 import { fastingRoutes } from './fasting/fasting-routes';
@@ -25,7 +31,10 @@ import { familyLettersRoutes, lettersRoutes } from './letters/letters-routes';
 import { liveRoutes } from './live/live-routes';
 import { pages } from './pages/pages';
 import { peopleRoutes } from './people/people-routes';
+import { profileRoutes } from './protocols/profiles-routes';
+import { protocolRoutes } from './protocols/protocols-routes';
 import { resultsRoutes } from './results/results-routes';
+import { sayItBackRoutes } from './say-it-back/say-it-back-routes';
 import { specimensRoutes } from './specimens/specimens-routes';
 import { rehearsalRoutes } from './stand-ins/rehearsal-routes';
 import { smsHooks } from './webhooks/sms-hooks';
@@ -42,22 +51,32 @@ export const mounts: readonly Mount[] = [
   { under: '/api/clinic', routes: peopleRoutes },
   { under: '/api/clinic', routes: accessRecordRoutes },
   { under: '/api/clinic', routes: setUpRoutes },
+  { under: '/api/clinic', routes: protocolRoutes },
+  { under: '/api/clinic', routes: profileRoutes },
   { under: '/api/clinic', routes: childrenRoutes },
   { under: '/api/clinic', routes: ordersRoutes },
+  { under: '/api/clinic', routes: individualPlansRoutes },
   { under: '/api/clinic', routes: seriesRoutes },
+  { under: '/api/clinic', routes: setOutRoutes },
   { under: '/api/clinic', routes: collectionsRoutes },
+  { under: '/api/clinic', routes: closingRoutes },
   { under: '/api/clinic', routes: callRoutes },
+  { under: '/api/clinic', routes: alertRoutes },
   { under: '/api/clinic', routes: specimensRoutes },
   { under: '/api/clinic', routes: resultsRoutes },
   { under: '/api/clinic', routes: lettersRoutes },
   { under: '/api/clinic', routes: messageRoutes },
+  { under: '/api/clinic', routes: consentRoutes },
   { under: '/api/clinic', routes: wordingRoutes },
   { under: '/api/clinic', routes: liveRoutes },
   { under: '/api/clinic', routes: rehearsalRoutes },
   { under: '/api/family', routes: familySessionRoutes },
   { under: '/api/family', routes: fastingRoutes },
+  { under: '/api/family', routes: sayItBackRoutes },
   { under: '/api/family', routes: familyLettersRoutes },
+  { under: '/api/family', routes: familyFeedRoutes },
   { under: '/hooks', routes: smsHooks },
+  { under: '/feeds', routes: feedRoutes },
 ];
 
 /**

@@ -1,5 +1,8 @@
 import { sealRecords } from './access-record/seal';
-import { raiseCall } from './calls/calls';
+import { alertJobs } from './alerts/alert-jobs';
+import { alertInstead } from './alerts/pass-on-alerts';
+import { callInstead } from './calls/call-instead';
+import { closeNeedlessCalls } from './calls/needless-calls';
 import { raiseUnansweredCalls } from './calls/unanswered-calls';
 import { openMailChannel } from './channels/mail/mail-channel';
 import { openSmsChannel } from './channels/sms/sms-channel';
@@ -7,34 +10,26 @@ import { readSettings, SettingsError } from './config/settings';
 import type { Context } from './context';
 import { pruneChanges } from './database/prune';
 import { checkFitness, NotFit } from './main';
+import { followUnreadLetters } from './messages/unread-letters';
 import { openContext } from './open-context';
-import type { GiveUp } from './outbox/give-up';
 import { outboxHealth } from './outbox/health';
 import { createSender } from './outbox/sender';
 import { runSender, type PeriodicJob } from './outbox/sender-loop';
-
-/** A message that reached nobody becomes a call, in the transaction that gives it up. */
-const callInstead =
-  ({ db, clock }: Context): GiveUp =>
-  async (transaction, message) => {
-    const now = clock.now();
-    const whom = message.familyMemberId ?? `message-${message.id}`;
-    await raiseCall(db, transaction, {
-      reason: message.callReason,
-      openKey: `${message.callReason}:${whom}:${message.morningOn ?? ''}`,
-      householdId: message.householdId,
-      familyMemberId: message.familyMemberId,
-      isForClinician: false,
-      urgentAt: now,
-      now,
-    });
-  };
+import { raiseNotSaidBackCalls } from './say-it-back/say-back-calls';
 
 function jobsOf(context: Context): PeriodicJob[] {
-  const { db, clock, log } = context;
+  const { db, clock, log, settings } = context;
   let wasStuck = false;
   return [
-    { name: 'unanswered families', everyMs: 5_000, run: () => raiseUnansweredCalls(context) },
+    {
+      name: 'unanswered families',
+      everyMs: settings.sender.callListEveryMs,
+      run: () => raiseUnansweredCalls(context),
+    },
+    { name: 'plans not said back', everyMs: 60_000, run: () => raiseNotSaidBackCalls(context) },
+    { name: 'needless calls', everyMs: 10_000, run: () => closeNeedlessCalls(context) },
+    ...alertJobs(context),
+    { name: 'unread letters', everyMs: 60_000, run: () => followUnreadLetters(context) },
     {
       name: 'sealing',
       everyMs: 10_000,
@@ -68,6 +63,7 @@ async function main(): Promise<void> {
     throw error;
   });
   const mail = openMailChannel(settings);
+  const call = callInstead(context);
   const loop = runSender({
     sender: createSender({
       db: context.db,
@@ -75,8 +71,14 @@ async function main(): Promise<void> {
       log: context.log,
       sms: openSmsChannel(settings),
       mail,
-      giveUp: callInstead(context),
+      giveUp: (transaction, message) =>
+        message.kind === 'alert'
+          ? alertInstead(context, transaction, message)
+          : call(transaction, message),
+      claimLastsMs: settings.sender.claimLastsMs,
+      perSecond: settings.sender.perSecond,
     }),
+    idleMs: settings.sender.looksEveryMs,
     log: context.log,
     refresh: () => context.clock.refresh(),
     jobs: jobsOf(context),

@@ -44,10 +44,19 @@ async function everything() {
   await tally.step('Server', () => jest({ projects: ['server'] }));
   await tally.step('Applications', () => jest({ projects: ['web'] }));
   for (const [title, build] of builds) await tally.step(title, build);
+  await tally.step('Simulation, some days', someDays);
   await tally.step('Sizes as served', servedSizes);
   await tally.step('End to end', () =>
     playwright({ configuration: 'test/e2e/playwright.config.ts' }),
   );
+}
+
+/** A few families for some days, with faults; `npm run simulate` runs more. Loaded late: it needs packages. */
+async function someDays() {
+  const { simulate, smallRun } = await import('./simulation/simulate.mjs');
+  const { passed, failed, table } = await simulate(smallRun);
+  say(table);
+  return { passed, failed };
 }
 
 /** Parts that are run by name only. */

@@ -14,8 +14,8 @@ export interface IssuedLink {
 /** NIST SP 800-63A: an enrolment code sent to an address on file lives 72 hours. Later a code signs the family in. */
 const invitationHours = 72;
 
-/** 22 characters of base64url carry 132 bits. */
-const tokenLength = 22;
+/** 16 characters of base64url carry 96 bits; each one is paid for in a text message. Five tries lock a link. */
+const tokenLength = 16;
 
 const hour = 3_600_000;
 

@@ -2,6 +2,7 @@ import type { Request } from 'express';
 import type { Transaction } from 'sequelize';
 import type { z } from 'zod';
 import type { LinkDescription, openLinkRequest } from '../../shared/contracts/family-session';
+import { builtLanguages } from '../../shared/languages/languages';
 import { record, systemActor } from '../access-record/record';
 import type { Actor } from '../access-record/record';
 import type { Context } from '../context';
@@ -29,6 +30,10 @@ async function isOwnPhone(
   return link.kind === 'household' && phone?.familyMemberId === link.familyMemberId;
 }
 
+/** The language of the page that asks, where nobody is known yet whose own it could be. */
+const pageLanguage = (req: Request): string =>
+  req.acceptsLanguages(...builtLanguages.map(({ id }) => id)) || 'en';
+
 /** What a link is for and whether it is open. Uses nothing up and says nothing about a child. */
 export async function describeLink(
   context: Context,
@@ -41,7 +46,7 @@ export async function describeLink(
       kind: 'invitation',
       state: 'unknown',
       needs: 'birth-date',
-      clinic: await clinicForFamily(context, null, 'en'),
+      clinic: await clinicForFamily(context, null, pageLanguage(req)),
     };
   return {
     kind: link.kind,

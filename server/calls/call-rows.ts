@@ -59,7 +59,7 @@ function reachOf(staff: StaffMember): { sql: string; replacements: Record<string
     'calls.read',
   );
   const more = isOutreachOnly
-    ? `(task.reason = 'letter-unread' AND task.claimed_by_staff_id IS NULL
+    ? `(task.reason IN ('letter-unread', 'letter-unread-outreach') AND task.claimed_by_staff_id IS NULL
         AND households.site_id = :reachSiteId)`
     : 'task.household_id IS NULL';
   return { sql: `((${reach.sql}) OR ${more})`, replacements: { ...reach.replacements } };

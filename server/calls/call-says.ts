@@ -23,6 +23,8 @@ const planReasons: ReadonlySet<string> = new Set([
   'language-not-signed',
   'does-not-read',
   'evening-too-late',
+  'not-understood',
+  'not-said-back',
   'opted-out',
 ]);
 

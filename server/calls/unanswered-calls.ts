@@ -1,10 +1,12 @@
-import type { Sequelize } from 'sequelize';
+import type { Sequelize, Transaction } from 'sequelize';
+import { raiseAlert } from '../alerts/raise-alert';
 import type { Context } from '../context';
 import { inTransaction, select } from '../database/connection';
 import { closeCalls, raiseCall } from './calls';
 
 interface HouseholdDay {
   household_id: number;
+  site_id: number;
   child_id: number;
   morning_id: number;
   planned_on: string;
@@ -21,11 +23,12 @@ export const notAnsweredKey = (householdId: number, on: string): string =>
  * tasks of families that have answered or arrived meanwhile are taken off again. Runs every minute.
  * @returns how many tasks are new.
  */
-export async function raiseUnansweredCalls({ db, clock }: Context): Promise<number> {
+export async function raiseUnansweredCalls(context: Context): Promise<number> {
+  const { db, clock } = context;
   const now = clock.now();
   const days = await select<HouseholdDay>(
     db,
-    `SELECT child.household_id, MIN(child.id) AS child_id, MIN(morning.id) AS morning_id, morning.planned_on,
+    `SELECT child.household_id, MIN(morning.site_id) AS site_id, MIN(child.id) AS child_id, MIN(morning.id) AS morning_id, morning.planned_on,
        MIN(morning.arrival_at) AS arrival_at,
        MIN(COALESCE(morning.escort_family_member_id, morning.night_carer_family_member_id)) AS escort_id,
        SUM(NOT EXISTS (SELECT 1 FROM fasting_checks
@@ -69,10 +72,36 @@ export async function raiseUnansweredCalls({ db, clock }: Context): Promise<numb
       });
       if (isNew) raised += 1;
     }
+    await alertOnce(context, transaction, toRaise);
     return raised;
   });
 }
 
+/** One alert a site and morning, however many families are silent by and by: the call list shows who. */
+async function alertOnce(
+  context: Context,
+  transaction: Transaction,
+  silent: readonly HouseholdDay[],
+): Promise<void> {
+  const bySite = new Map<string, HouseholdDay[]>();
+  for (const day of silent) {
+    const key = `${day.site_id}:${day.planned_on}`;
+    bySite.set(key, [...(bySite.get(key) ?? []), day]);
+  }
+  for (const days of bySite.values())
+    for (const { site_id: siteId, planned_on: on } of days.slice(0, 1))
+      await raiseAlert(context, transaction, {
+        kind: 'not-answered',
+        siteId,
+        cause: on,
+        count: days.length,
+        usefulUntil:
+          Math.max(...days.map((day) => day.arrival_at.getTime())) + usefulAfterArrivalMs,
+      });
+}
+
+/** A family that has not come by then is called as one that stayed away. */
+const usefulAfterArrivalMs = 2 * 3_600_000;
 const oneMorningMs = 12 * 3_600_000;
 
 /** Families with whom a person has spoken this morning; what they said may stand nowhere but in the call's note. */

@@ -40,22 +40,6 @@ export class ChildFamilyMember extends Model<
   declare seesResults: boolean;
 }
 
-/** A yes to being written to, by channel; texts before 8 in the morning have a yes of their own. */
-export class ContactConsent extends Model<
-  InferAttributes<ContactConsent>,
-  InferCreationAttributes<ContactConsent>
-> {
-  declare id: CreationOptional<number>;
-  declare familyMemberId: number;
-  declare channel: 'sms' | 'mail';
-  declare coversEarlyMorning: boolean;
-  declare how: string;
-  declare wordingVersion: string;
-  declare givenAt: Date;
-  declare recordedByStaffId: number | null;
-  declare withdrawnAt: Date | null;
-}
-
 export function initFamilyMemberModels(db: Sequelize): void {
   FamilyMember.init(
     {
@@ -84,19 +68,5 @@ export function initFamilyMemberModels(db: Sequelize): void {
       seesResults: { type: DataTypes.BOOLEAN, allowNull: false },
     },
     { sequelize: db, tableName: 'child_family_members' },
-  );
-  ContactConsent.init(
-    {
-      id: { type: DataTypes.BIGINT.UNSIGNED, primaryKey: true, autoIncrement: true },
-      familyMemberId: { type: DataTypes.BIGINT.UNSIGNED, allowNull: false },
-      channel: { type: DataTypes.ENUM('sms', 'mail'), allowNull: false },
-      coversEarlyMorning: { type: DataTypes.BOOLEAN, allowNull: false },
-      how: { type: DataTypes.STRING(60), allowNull: false },
-      wordingVersion: { type: DataTypes.STRING(40), allowNull: false },
-      givenAt: { type: DataTypes.DATE(3), allowNull: false },
-      recordedByStaffId: { type: DataTypes.INTEGER.UNSIGNED },
-      withdrawnAt: { type: DataTypes.DATE(3) },
-    },
-    { sequelize: db, tableName: 'contact_consents' },
   );
 }

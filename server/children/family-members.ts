@@ -7,10 +7,11 @@ import type { Context } from '../context';
 import { inTransaction, select } from '../database/connection';
 import { invalid, Problem } from '../http/problem';
 import { announce } from '../live/announce';
+import { agreedPurposes, setConsents, type ConsentPurpose } from '../messages/contact-consents';
 import { planComingNights } from '../messages/plan-coming-nights';
 import { siteOf } from '../sites/sites';
 import { checkedFamilyMember, type FamilyMemberDetails } from './contact-details';
-import { ChildFamilyMember, ContactConsent, FamilyMember } from './family-member-model';
+import { ChildFamilyMember, FamilyMember } from './family-member-model';
 import { childInReach, type ReachedChild } from './reach';
 
 /** How consents to being written to were asked; the sentence that staff read out, by version. */
@@ -164,31 +165,26 @@ async function writeContactConsents(
   },
 ): Promise<void> {
   const { familyMemberId, member, staffId, now } = consents;
-  const given = await ContactConsent.findAll({
-    where: { familyMemberId, withdrawnAt: null },
-    transaction,
-  });
-  const add = async (channel: 'sms' | 'mail', coversEarlyMorning: boolean): Promise<void> => {
-    const isGiven = given.some(
-      (consent) =>
-        consent.channel === channel && (consent.coversEarlyMorning || !coversEarlyMorning),
-    );
-    if (isGiven) return;
-    await ContactConsent.create(
-      {
-        ...consentAsked,
-        familyMemberId,
-        channel,
-        coversEarlyMorning,
-        givenAt: new Date(now),
-        recordedByStaffId: staffId,
-        withdrawnAt: null,
-      },
-      { transaction },
-    );
+  const db = FamilyMember.sequelize;
+  if (!db) throw new Error('The models are not open');
+  const add = async (
+    channel: 'sms' | 'mail',
+    address: string | null,
+    more: readonly ConsentPurpose[],
+  ): Promise<void> => {
+    if (address === null) return;
+    const said = {
+      ...{ familyMemberId, channel, address, staffId, ...consentAsked },
+      language: member.readsLanguage,
+      at: now,
+    };
+    // What was agreed to before is not taken back by a form that adds another child.
+    const before = await agreedPurposes(db, transaction, said);
+    await setConsents(db, transaction, said, new Set([...before, 'visits', 'letters', ...more]));
   };
-  if (member.agreesToTexts) await add('sms', member.agreesToEarlyTexts);
-  if (member.agreesToMail) await add('mail', false);
+  if (member.agreesToTexts)
+    await add('sms', member.phone, member.agreesToEarlyTexts ? ['early-morning'] : []);
+  if (member.agreesToMail) await add('mail', member.email, []);
 }
 
 type FamilyMemberRow = Omit<

@@ -31,6 +31,16 @@ export const happeningSources: readonly HappeningSource[] = [
       FROM orders WHERE child_id = :childId AND reported_at IS NOT NULL`,
   },
   {
+    right: 'orders.read',
+    sql: `SELECT signed_at AS at, 'order' AS kind, ${facts('own-plan', `'version', version`)} AS facts,
+        ${staffName('signed_by_staff_id')} AS \`by\`
+      FROM individual_plans WHERE child_id = :childId
+      UNION ALL
+      SELECT ended_at, 'order', ${facts('own-plan-ended', `'version', version, 'reason', end_reason`)},
+        ${staffName('ended_by_staff_id')}
+      FROM individual_plans WHERE child_id = :childId AND ended_at IS NOT NULL`,
+  },
+  {
     right: 'consents.read',
     sql: `SELECT given_at AS at, 'consent' AS kind,
         ${facts('consent', `'who', ${memberName('family_member_id')}, 'how', how, 'form', form_version`)} AS facts,
@@ -71,6 +81,12 @@ export const happeningSources: readonly HappeningSource[] = [
         )} AS facts,
         ${memberName('checks.family_member_id')} AS \`by\`
       FROM fasting_checks checks JOIN mornings ON mornings.id = checks.morning_id
+      WHERE mornings.child_id = :childId
+      UNION ALL
+      SELECT said.received_at, 'answer',
+        ${facts('said-back', `'question', said.question, 'isRight', IF(said.is_right, 'yes', 'no')`)},
+        ${memberName('said.family_member_id')}
+      FROM say_backs said JOIN mornings ON mornings.id = said.morning_id
       WHERE mornings.child_id = :childId
       UNION ALL
       SELECT arrived_at, 'arrival', ${facts('arrived', `'number', number`)}, NULL

@@ -1,13 +1,17 @@
-import type { BeginCollectionRequest, MorningChanged } from '../../shared/contracts/this-morning';
-import { hungerCeiling } from '../../shared/domain/fasting-check';
+import type { z } from 'zod';
+import type { beginCollectionRequest, MorningChanged } from '../../shared/contracts/this-morning';
+import { doorFast } from '../../shared/domain/door-check';
 import type { Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import { changedMeanwhile, notFound, Problem } from '../http/problem';
-import { doorIntakeAt } from './fast-so-far';
+import { isClinician } from './door-check';
+import { heardAtTheDoor } from './fast-so-far';
 import type { DoorCheckRow } from './morning-facts';
 import { changeMorning, updateMorning, type ChangeStep } from './morning-change';
+
+export type BeginCollection = z.output<typeof beginCollectionRequest>;
 
 const minute = 60_000;
 
@@ -18,32 +22,51 @@ interface RoomUse {
 }
 
 /**
- * The child goes into a room. The nurse's door check opens this; too short or too long a fast needs a clinician's
- * reason on that check. A room whose air is not clean yet warns and never blocks.
+ * The child goes into a room. The nurse's door check opens this; too short a fast needs a clinician's reason on
+ * that check, past the longest fast a clinician gives the reason there or here. A room whose air is not clean yet warns
+ * and never blocks.
+ * @throws Problem 403 'clinician-decides' when somebody else gives the reason, 409 'not-long-enough' and
+ * 'longest-fast-passed' without one.
  */
 export function beginCollection(
   context: Context,
   actor: Actor,
   staff: StaffMember,
   morningId: number,
-  { version, roomId }: BeginCollectionRequest,
+  { version, roomId, ceilingReason }: BeginCollection,
 ): Promise<MorningChanged> {
   return changeMorning(context, actor, staff, morningId, 'collection-begun', async (step) => {
     const { plan, now, transaction } = step;
-    if (await isBegunAlready(context, step, staff, { version, roomId }))
+    if (await isBegunAlready(context, step, staff, { version, roomId, ceilingReason }))
       return { isRepeated: true };
     if (plan.state !== 'here')
       throw plan.arrivedAt === null
         ? new Problem(409, 'not-here-yet', 'This child has not arrived yet.')
         : new Problem(409, 'morning-over', 'The collection of this morning has begun or is over.');
+    if (ceilingReason !== null && !isClinician(staff))
+      throw new Problem(
+        403,
+        'clinician-decides',
+        'A clinician decides to go on and gives the reason.',
+        { errors: [{ path: 'ceilingReason', message: 'A clinician gives this reason.' }] },
+      );
     const check = await lastDoorCheck(context, step);
-    refuseUnlessOpen(step, check);
+    refuseUnlessOpen(step, check, ceilingReason);
     const warnings = await roomWarnings(context, step, roomId);
     await updateMorning(context.db, step, version, { state: 'collecting' });
     await context.db.query(
-      `INSERT INTO collections (morning_id, room_id, begun_at, begun_by_staff_id)
-       VALUES (:morningId, :roomId, :now, :staffId)`,
-      { replacements: { morningId, roomId, now: new Date(now), staffId: staff.id }, transaction },
+      `INSERT INTO collections (morning_id, room_id, begun_at, begun_by_staff_id, ceiling_reason)
+       VALUES (:morningId, :roomId, :now, :staffId, :ceilingReason)`,
+      {
+        replacements: {
+          morningId,
+          roomId,
+          ceilingReason,
+          now: new Date(now),
+          staffId: staff.id,
+        },
+        transaction,
+      },
     );
     await context.db.query(
       `UPDATE series SET state = 'collecting', version = version + 1 WHERE id = :seriesId AND state = 'planned'`,
@@ -51,7 +74,7 @@ export function beginCollection(
     );
     if (check?.verdict === 'cannot-tell')
       warnings.push(step.words.text('clinic.warning.cannot-tell'));
-    return { warnings, detail: { roomId } };
+    return { warnings, detail: ceilingReason === null ? { roomId } : { roomId, ceilingReason } };
   });
 }
 
@@ -59,7 +82,7 @@ async function isBegunAlready(
   context: Context,
   { plan, transaction }: ChangeStep,
   staff: StaffMember,
-  { version, roomId }: BeginCollectionRequest,
+  { version, roomId }: BeginCollection,
 ): Promise<boolean> {
   const [begun] = await select<{ room_id: number; begun_by_staff_id: number }>(
     context.db,
@@ -89,22 +112,27 @@ async function lastDoorCheck(
   return check ?? null;
 }
 
-function refuseUnlessOpen({ plan, now, words }: ChangeStep, check: DoorCheckRow | null): void {
+function refuseUnlessOpen(
+  { plan, now, words }: ChangeStep,
+  check: DoorCheckRow | null,
+  ceilingReason: string | null,
+): void {
   if (!check || (plan.fedAt !== null && check.checked_at.getTime() <= plan.fedAt))
     throw new Problem(409, 'door-check-first', 'Check at the door first.');
-  if (check.go_on_reason !== null || plan.plan.kind === 'individual') return;
-  const lastIntakeAt = doorIntakeAt(check, plan.plan);
-  if (lastIntakeAt === null) return;
-  const readyAt = lastIntakeAt + plan.plan.leastMinutes * minute;
-  if (readyAt > now)
+  const at = (instant: number) =>
+    doorFast({ ...heardAtTheDoor(check), plan: plan.plan, now: instant });
+  const { readyAt, ceiling } = at(now);
+  if (readyAt !== null && readyAt > now && check.go_on_reason === null)
     throw new Problem(
       409,
       'not-long-enough',
       `Not fasted long enough until ${words.clock(readyAt, plan.zone)}. A clinician decides to go on and gives the reason.`,
       { readyAt: new Date(readyAt).toISOString() },
     );
-  const { longestMinutes } = plan.plan;
-  if (hungerCeiling({ lastIntakeAt, longestMinutes, now }) === 'feed')
+  if (ceiling !== 'feed' || ceilingReason !== null) return;
+  // A reason given while hunger pressed was given for this; one for too short a fast was not.
+  const knewOfCeiling = at(check.checked_at.getTime()).ceiling !== 'ok';
+  if (check.go_on_reason === null || !knewOfCeiling)
     throw new Problem(
       409,
       'longest-fast-passed',

@@ -1,8 +1,8 @@
 import type { z } from 'zod';
 import { can, isRole } from '../../shared/access/rights';
 import type { doorCheckRequest, MorningChanged } from '../../shared/contracts/this-morning';
-import type { Verdict } from '../../shared/contracts/common';
 import type { Instant } from '../../shared/domain/day';
+import { doorFast, type DoorFast } from '../../shared/domain/door-check';
 import type { FastingPlan } from '../../shared/domain/fasting-plan';
 import type { Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
@@ -50,18 +50,19 @@ export function checkAtTheDoor(
       );
     const faults = timeFaults(input, now);
     if (faults.length > 0) throw invalid(faults);
-    const verdict = verdictAtTheDoor(input, plan.plan, now);
+    const { verdict, explanation } = fastAtTheDoor(input, plan.plan, now);
     await updateMorning(context.db, step, input.version, {});
     await context.db.query(
-      `INSERT INTO door_checks (morning_id, last_food_at, last_drink_at, medicine, woke_at, is_well, brought_by, verdict,
-         go_on_reason, checked_by_staff_id, checked_at)
-       VALUES (:morningId, :lastFoodAt, :lastDrinkAt, :medicine, :wokeAt, :isWell, :broughtBy, :verdict, :goOnReason,
-         :staffId, :now)`,
+      `INSERT INTO door_checks (morning_id, last_food_at, food_item, last_drink_at, drink_item, medicine, woke_at, is_well,
+         blood_glucose_mg_dl, brought_by, verdict, explanation, go_on_reason, checked_by_staff_id, checked_at)
+       VALUES (:morningId, :lastFoodAt, :foodItem, :lastDrinkAt, :drinkItem, :medicine, :wokeAt, :isWell,
+         :bloodGlucoseMgDl, :broughtBy, :verdict, :explanation, :goOnReason, :staffId, :now)`,
       {
         replacements: {
           ...columnsOf(input),
           morningId,
           verdict,
+          explanation: JSON.stringify(explanation),
           staffId: staff.id,
           now: new Date(now),
         },
@@ -80,7 +81,10 @@ function columnsOf(input: DoorCheckInput) {
   return {
     lastFoodAt: date(input.lastFoodAt),
     lastDrinkAt: date(input.lastDrinkAt),
+    foodItem: input.lastFoodAt === null ? null : input.foodItem,
+    drinkItem: input.lastDrinkAt === null ? null : input.drinkItem,
     wokeAt: date(input.wokeAt),
+    bloodGlucoseMgDl: input.bloodGlucoseMgDl,
     medicine: input.medicine,
     isWell: input.isWell,
     broughtBy: input.broughtBy,
@@ -100,17 +104,15 @@ function timeFaults(input: DoorCheckInput, now: Instant): FieldError[] {
 }
 
 /** Against the clock on the wall: what was too short at home can be long enough at the door. */
-export function verdictAtTheDoor(
-  input: Pick<DoorCheckInput, 'lastFoodAt' | 'lastDrinkAt' | 'isNothingSincePlan'>,
-  plan: FastingPlan,
-  now: Instant,
-): Verdict {
-  if (plan.kind === 'individual') return 'cannot-tell';
-  const told = [at(input.lastFoodAt), at(input.lastDrinkAt)].filter((time) => time !== null);
-  const lastIntakeAt =
-    told.length > 0 ? Math.max(...told) : input.isNothingSincePlan ? plan.stopAt : null;
-  if (lastIntakeAt === null) return 'cannot-tell';
-  return lastIntakeAt + plan.leastMinutes * minute <= now ? 'long-enough' : 'not-long-enough';
+function fastAtTheDoor(input: DoorCheckInput, plan: FastingPlan, now: Instant): DoorFast {
+  const { lastFoodAt, foodItem, lastDrinkAt, drinkItem, isNothingSincePlan } = input;
+  return doorFast({
+    food: lastFoodAt === null ? null : { at: Date.parse(lastFoodAt), item: foodItem },
+    drink: lastDrinkAt === null ? null : { at: Date.parse(lastDrinkAt), item: drinkItem },
+    isNothingSincePlan,
+    plan,
+    now,
+  });
 }
 
 /** The same check sent twice by the same person from the same screen is one check. */
@@ -135,6 +137,9 @@ async function isSameAsLast(
     last.checked_by_staff_id === staff.id &&
     same(last.last_food_at, input.lastFoodAt) &&
     same(last.last_drink_at, input.lastDrinkAt) &&
+    last.food_item === columnsOf(input).foodItem &&
+    last.drink_item === columnsOf(input).drinkItem &&
+    last.blood_glucose_mg_dl === input.bloodGlucoseMgDl &&
     same(last.woke_at, input.wokeAt) &&
     last.medicine === input.medicine &&
     (last.is_well === 1) === input.isWell &&

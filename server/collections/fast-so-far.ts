@@ -1,7 +1,8 @@
 import type { MorningRow } from '../../shared/contracts/this-morning';
 import type { Verdict } from '../../shared/contracts/common';
-import { hungerCeiling } from '../../shared/domain/fasting-check';
-import { longestEndsAt, type StandardPlan } from '../../shared/domain/fasting-plan';
+import { doorFast, type DoorFastRequest } from '../../shared/domain/door-check';
+import type { Explanation } from '../../shared/domain/explanation';
+import { longestEndsAt } from '../../shared/domain/fasting-plan';
 import { millisecondsPerMinute, type Instant } from '../../shared/domain/day';
 import type { DoorCheckRow, MorningFacts, SaidRow } from './morning-facts';
 
@@ -9,6 +10,8 @@ import type { DoorCheckRow, MorningFacts, SaidRow } from './morning-facts';
 export interface FastSoFar {
   readonly verdict: Verdict | null;
   readonly lastIntakeAt: Instant | null;
+  /** The longest fast counts from here; a sip of water does not move it. */
+  readonly hungryFromAt: Instant | null;
   readonly isPlanOnly: boolean;
   readonly isUnsure: boolean;
   readonly readyAt: Instant | null;
@@ -16,20 +19,26 @@ export interface FastSoFar {
   readonly fastedMinutes: number | null;
   readonly ceiling: MorningRow['ceiling'];
   readonly bar: MorningRow['bar'];
+  readonly explanation: Explanation;
 }
+
+export type Heard = Pick<DoorFastRequest, 'food' | 'drink' | 'isNothingSincePlan'>;
 
 const iso = (at: Instant): string => new Date(at).toISOString();
 
-/** The newest time by mouth that the door check names; the plan's stop when all went as planned. */
-export function doorIntakeAt(
-  check: Pick<DoorCheckRow, 'last_food_at' | 'last_drink_at' | 'verdict'>,
-  plan: StandardPlan | null,
-): Instant | null {
-  const told = [check.last_food_at, check.last_drink_at].flatMap((at) =>
-    at ? [at.getTime()] : [],
-  );
-  if (told.length > 0) return Math.max(...told);
-  return check.verdict === 'cannot-tell' ? null : (plan?.stopAt ?? null);
+/** What the door check names; "nothing since the plan" where it names no time and could tell. */
+export function heardAtTheDoor(
+  check: Pick<
+    DoorCheckRow,
+    'last_food_at' | 'food_item' | 'last_drink_at' | 'drink_item' | 'verdict'
+  >,
+): Heard {
+  const food = check.last_food_at && { at: check.last_food_at.getTime(), item: check.food_item };
+  const drink = check.last_drink_at && {
+    at: check.last_drink_at.getTime(),
+    item: check.drink_item,
+  };
+  return { food, drink, isNothingSincePlan: !food && !drink && check.verdict !== 'cannot-tell' };
 }
 
 /** The newest answer about food and drink; "late", "ill" and "not coming" say nothing of it. */
@@ -40,50 +49,62 @@ export function newestAnswer(said: readonly SaidRow[]): SaidRow | null {
 const isAboutFood = (answer: SaidRow['answer']): boolean =>
   answer === 'nothing' || answer === 'sip' || answer === 'feed' || answer === 'unsure';
 
-function intakeOf(facts: MorningFacts, plan: StandardPlan | null): Instant | null {
-  if (facts.doorCheck) return doorIntakeAt(facts.doorCheck, plan);
-  const answer = newestAnswer(facts.said);
-  if (!answer) return null;
-  if (answer.last_intake_at) return answer.last_intake_at.getTime();
-  return answer.answer === 'nothing' ? (plan?.stopAt ?? null) : null;
+/** The same of the family's answer: a sip is water, milk or food is a meal of no known kind. */
+function heardFrom(answer: SaidRow): Heard {
+  const at = answer.last_intake_at?.getTime() ?? null;
+  const taken = at === null ? null : { at, item: null };
+  const isSip = answer.answer === 'sip';
+  return {
+    food: isSip ? null : taken,
+    drink: isSip && at !== null ? { at, item: 'water' } : null,
+    isNothingSincePlan: at === null && answer.answer === 'nothing',
+  };
 }
+
+const heardNothing: Heard = { food: null, drink: null, isNothingSincePlan: false };
 
 export function fastSoFar(facts: MorningFacts, now: Instant): FastSoFar {
   const { plan } = facts.plan;
   const standard = plan.kind === 'standard' ? plan : null;
   const answer = newestAnswer(facts.said);
-  const verdict = facts.doorCheck?.verdict ?? answer?.verdict ?? null;
-  const lastIntakeAt = intakeOf(facts, standard);
   const isTold = facts.doorCheck !== null || answer !== null;
-  const isUnsure = isTold && (verdict === 'cannot-tell' || lastIntakeAt === null);
+  const heard = facts.doorCheck
+    ? heardAtTheDoor(facts.doorCheck)
+    : answer
+      ? heardFrom(answer)
+      : heardNothing;
   const endAt = facts.specimen?.collected_at.getTime() ?? facts.plan.fedAt ?? now;
-  const fastedMinutes =
-    lastIntakeAt === null || endAt < lastIntakeAt
-      ? null
-      : Math.floor((endAt - lastIntakeAt) / millisecondsPerMinute);
-  const none = { readyAt: null, longestAt: null, ceiling: 'ok', bar: null } as const;
-  const common = { verdict, lastIntakeAt, isPlanOnly: !isTold, isUnsure, fastedMinutes };
-  if (!standard) return { ...common, ...none };
+  const fast = doorFast({ ...heard, plan, now: endAt });
+  const { lastIntakeAt } = fast;
+  const verdict = facts.doorCheck?.verdict ?? answer?.verdict ?? null;
+  const common = {
+    verdict,
+    lastIntakeAt,
+    hungryFromAt: fast.hungryFromAt,
+    isPlanOnly: !isTold,
+    isUnsure: isTold && (verdict === 'cannot-tell' || lastIntakeAt === null),
+    fastedMinutes:
+      lastIntakeAt === null || endAt < lastIntakeAt
+        ? null
+        : Math.floor((endAt - lastIntakeAt) / millisecondsPerMinute),
+    explanation: fast.explanation,
+  };
+  if (!standard) return { ...common, readyAt: null, longestAt: null, ceiling: 'ok', bar: null };
 
-  const fromAt = lastIntakeAt ?? standard.stopAt;
-  const readyAt = fromAt + standard.leastMinutes * millisecondsPerMinute;
-  // A sip starts the least hours again; hunger goes on from the last meal.
-  const isSip = facts.doorCheck === null && answer?.answer === 'sip';
-  const hungryFromAt = isSip ? Math.min(fromAt, standard.stopAt) : fromAt;
-  const longestAt = longestEndsAt(hungryFromAt, standard);
+  const fromAt = lastIntakeAt ?? standard.mealStopAt;
+  const readyAt = fast.readyAt ?? fromAt + standard.leastMinutes * millisecondsPerMinute;
+  const longestAt = longestEndsAt(fast.hungryFromAt ?? fromAt, standard);
   const isOver = facts.specimen !== null || facts.plan.fedAt !== null || isEnded(facts);
   return {
     ...common,
     readyAt: lastIntakeAt === null ? null : readyAt,
     longestAt,
     // By the plan alone the ceiling presses too: a family that is not heard from may have stopped early.
-    ceiling: isOver
-      ? 'ok'
-      : hungerCeiling({ lastIntakeAt: hungryFromAt, longestMinutes: standard.longestMinutes, now }),
+    ceiling: isOver ? 'ok' : fast.ceiling,
     bar: {
       fromAt: iso(fromAt),
       isPlanOnly: !isTold,
-      isUnsure,
+      isUnsure: common.isUnsure,
       leastAt: iso(readyAt),
       longestAt: iso(longestAt),
       likelyCollectionAt: iso(likelyCollectionAt(facts, Math.min(readyAt, longestAt), now)),

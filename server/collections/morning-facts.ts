@@ -1,6 +1,8 @@
 import type { Sequelize } from 'sequelize';
 import type { MorningState } from '../../shared/contracts/common';
 import type { Day } from '../../shared/domain/day';
+import type { Explanation } from '../../shared/domain/explanation';
+import type { Item } from '../../shared/domain/fasting-protocol';
 import { select } from '../database/connection';
 import { toldAtOf, type Said } from '../fasting/told-rows';
 import { morningPlansOf, type MorningPlan } from '../series/morning-plans';
@@ -12,6 +14,8 @@ export interface SaidRow {
   readonly last_intake_at: Date | null;
   readonly verdict: 'long-enough' | 'not-long-enough' | 'cannot-tell' | null;
   readonly outcome: string;
+  /** How the answer was weighed; answers of before it was kept have none. */
+  readonly explanation: Explanation | null;
   readonly said: Said;
   readonly language: string;
   readonly device_at: Date | null;
@@ -22,10 +26,13 @@ export interface DoorCheckRow {
   readonly id: number;
   readonly morning_id: number;
   readonly last_food_at: Date | null;
+  readonly food_item: Item | null;
   readonly last_drink_at: Date | null;
+  readonly drink_item: 'water' | 'other' | null;
   readonly medicine: string | null;
   readonly woke_at: Date | null;
   readonly is_well: 0 | 1;
+  readonly blood_glucose_mg_dl: number | null;
   readonly brought_by: string;
   readonly verdict: 'long-enough' | 'not-long-enough' | 'cannot-tell';
   readonly go_on_reason: string | null;
@@ -171,7 +178,7 @@ export async function morningFactsOf(
 async function saidOf(db: Sequelize, ids: readonly number[]): Promise<SaidRow[]> {
   const rows = await select<SaidRow>(
     db,
-    `SELECT morning_id, source, answer, last_intake_at, verdict, outcome, said, language, device_at, received_at
+    `SELECT morning_id, source, answer, last_intake_at, verdict, outcome, explanation, said, language, device_at, received_at
      FROM fasting_checks WHERE morning_id IN (:ids) ORDER BY id`,
     { ids },
   );

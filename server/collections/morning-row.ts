@@ -3,10 +3,11 @@ import type { Instant } from '../../shared/domain/day';
 import { laboratoryCutOffAt } from '../../shared/domain/laboratory-day';
 import { specimenClocks } from '../../shared/domain/specimen-clocks';
 import { ageOn } from '../../shared/domain/day';
+import { answerExplained, fastExplained, planExplained } from '../fasting/explain-fast';
 import { toldAtOf } from '../fasting/told-rows';
 import type { StoredProfile } from '../protocols/protocols';
 import type { ClinicWords } from '../wording/clinic-words';
-import { fastSoFar, newestAnswer } from './fast-so-far';
+import { fastSoFar, newestAnswer, type FastSoFar } from './fast-so-far';
 import type { AdultRow, MorningFacts } from './morning-facts';
 import {
   ageInWords,
@@ -45,6 +46,7 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
     childId: plan.childId,
     fullName: plan.fullName,
     ageInWords: ageInWords(words, ageOn(plan.bornOn, plan.on)),
+    feeding: plan.feeding,
     number: plan.number,
     ofPlanned: plan.ofPlanned,
     suns: sunsOf(facts),
@@ -73,6 +75,7 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
     readyAt: iso(fast.readyAt),
     ceiling: fast.ceiling,
     bar: fast.bar,
+    explains: explainsOf(facts, fast, words),
     doorCheck: facts.doorCheck
       ? {
           at: facts.doorCheck.checked_at.toISOString(),
@@ -93,6 +96,20 @@ export function morningRowOf(facts: MorningFacts, around: RowSurroundings): Morn
     fedAt: iso(plan.fedAt),
     leftAt: iso(plan.leftAt),
   };
+}
+
+/** The plan, the newest answer as it was weighed, and the fast as it stands. */
+function explainsOf(
+  { plan, said }: MorningFacts,
+  fast: FastSoFar,
+  words: ClinicWords,
+): MorningRow['explains'] {
+  const weighed = newestAnswer(said)?.explanation ?? null;
+  return [
+    ...planExplained(words, plan),
+    ...(weighed ? [answerExplained(words, weighed)] : []),
+    ...(fast.isPlanOnly ? [] : [fastExplained(words, fast.explanation, plan.zone)]),
+  ];
 }
 
 function toldOf({ said }: MorningFacts): MorningRow['told'] {

@@ -47,14 +47,24 @@ function answerSays(words: ClinicWords, row: SaidRow, zone: string): string {
 export function doorSays(words: ClinicWords, check: DoorCheckRow, zone: string): string {
   const at = (key: string, time: Date | null): string | null =>
     time && words.text(`clinic.door.${key}`, { at: words.clock(time.getTime(), zone) });
+  const taken = (key: 'food' | 'drink', time: Date | null, item: string | null): string | null =>
+    time && item !== null
+      ? words.text('clinic.door.item', {
+          item: words.text(`clinic.item.${item}`),
+          at: words.clock(time.getTime(), zone),
+        })
+      : at(key, time);
   const withoutTime = check.verdict === 'cannot-tell' ? 'unknown' : 'nothing';
   const parts = [
-    at('food', check.last_food_at),
-    at('drink', check.last_drink_at),
+    taken('food', check.last_food_at, check.food_item),
+    taken('drink', check.last_drink_at, check.drink_item),
     check.last_food_at || check.last_drink_at ? null : words.text(`clinic.door.${withoutTime}`),
     check.medicine ? words.text('clinic.door.medicine', { medicine: check.medicine }) : null,
     at('woke', check.woke_at),
     words.text(check.is_well === 1 ? 'clinic.door.well' : 'clinic.door.not-well'),
+    check.blood_glucose_mg_dl === null
+      ? null
+      : words.text('clinic.door.glucose', { value: check.blood_glucose_mg_dl }),
     words.text('clinic.door.with', { who: check.brought_by }),
     check.go_on_reason ? words.text('clinic.door.going-on', { reason: check.go_on_reason }) : null,
   ];
@@ -170,6 +180,9 @@ export function summarySays(words: ClinicWords, counts: MorningCounts): string {
   });
 }
 
+export const reasonSays = (words: ClinicWords, reason: NextReason): string =>
+  capital(words.text(`clinic.next.reason.${reason}`));
+
 export function suggestionSays(
   words: ClinicWords,
   request: {
@@ -182,7 +195,7 @@ export function suggestionSays(
 ): string {
   const { callMe: name, roomName: room, reason, fast, zone } = request;
   if (fast.ceiling === 'feed') return words.text('clinic.next.feed', { name });
-  const said = { name, room, reason: capital(words.text(`clinic.next.reason.${reason}`)) };
+  const said = { name, room, reason: reasonSays(words, reason) };
   const says =
     reason.includes('longest') && fast.longestAt !== null
       ? words.text('clinic.next.child-limit', { ...said, at: words.clock(fast.longestAt, zone) })

@@ -14,7 +14,8 @@ import { clinicWords, type ClinicWords } from '../wording/clinic-words';
 import { fastSoFar } from './fast-so-far';
 import { morningFactsOf, type MorningFacts } from './morning-facts';
 import { morningRowOf } from './morning-row';
-import { suggestionSays, summarySays } from './morning-says';
+import { orderExplained } from '../fasting/explain-fast';
+import { reasonSays, suggestionSays, summarySays } from './morning-says';
 import { recordViewOnce } from '../access-record/record-view-once';
 
 /** The sheet of a day at the staff member's site, in order of arrival; no results anywhere on it. */
@@ -188,7 +189,7 @@ function suggestionOf(words: ClinicWords, sheet: Sheet, now: Instant): ThisMorni
         arrivedAt: facts.plan.arrivedAt,
         isDoorChecked: facts.doorCheck !== null,
         readyAt: fast.readyAt,
-        lastIntakeAt: fast.lastIntakeAt,
+        hungryFromAt: fast.hungryFromAt,
         longestMinutes: plan.kind === 'standard' ? plan.longestMinutes : Number.MAX_SAFE_INTEGER,
       };
     }),
@@ -205,5 +206,6 @@ function suggestionOf(words: ClinicWords, sheet: Sheet, now: Instant): ThisMorni
     morningId,
     roomId: room.id,
     says: suggestionSays(words, { callMe, roomName: room.name, reason: next.reason, fast, zone }),
+    explains: orderExplained(words, next.explanation, reasonSays(words, next.reason)),
   };
 }

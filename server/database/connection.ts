@@ -56,6 +56,8 @@ export function connect(url: string, { poolSize = 20 }: ConnectOptions = {}): Se
         bigIntAsNumber: true,
         decimalAsNumber: false,
         checkNumberRange: true,
+        // The connector's own second is too short while the machine is busy.
+        connectTimeout: 10_000,
       },
     },
   );

@@ -194,5 +194,5 @@ function wouldPass(plan: MorningPlan, newArrivalAt: Instant, before: readonly To
   const told = newestFood(before, plan.morningId);
   const fedAt = told?.answer === 'feed' ? told.last_intake_at?.getTime() : undefined;
   const likelyCollectionAt = newArrivalAt + plan.site.usualWaitMinutes * minute;
-  return longestEndsAt(fedAt ?? standard.stopAt, standard) < likelyCollectionAt;
+  return longestEndsAt(fedAt ?? standard.mealStopAt, standard) < likelyCollectionAt;
 }

@@ -42,9 +42,8 @@ export function checkChild(
   const isJustAhead =
     lastIntakeAt !== null && lastIntakeAt > now && lastIntakeAt <= now + aheadMinutes * minute;
   const intakeAt = isJustAhead ? now : lastIntakeAt;
-  const usesTime = intakeAt !== null && answer !== 'nothing';
   return fastingCheck({
-    answer: usesTime ? { kind: answer, lastIntakeAt: intakeAt } : { kind: answer },
+    answer: intakeAt === null ? { kind: answer } : { kind: answer, lastIntakeAt: intakeAt },
     plan: plan.plan,
     now,
     arrivalAt,

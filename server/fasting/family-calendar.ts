@@ -64,8 +64,17 @@ export async function familyCalendarFile(
   visitor: FamilyVisitor,
 ): Promise<string> {
   const { household, words } = await householdWords(context, actor, visitor);
-  const { origin } = context.settings;
-  const entries = household.nights.flatMap(({ children, firstArrivalAt }): CalendarEntry[] => {
+  const entries = calendarEntriesOf(household, words, context.settings.origin);
+  return calendarDownload({ entries, stampAt: context.clock.now() });
+}
+
+/** One neutral entry a morning of the household; brothers and sisters share it. */
+export function calendarEntriesOf(
+  household: Household,
+  words: FamilyWords,
+  origin: string,
+): CalendarEntry[] {
+  return household.nights.flatMap(({ children, firstArrivalAt }): CalendarEntry[] => {
     const [plan] = [...children].sort((left, right) => left.arrivalAt - right.arrivalAt);
     if (!plan) return [];
     const stops = children.flatMap((child) => standardPlanOf(child)?.stopReminderAt ?? []);
@@ -86,5 +95,4 @@ export async function familyCalendarFile(
       },
     ];
   });
-  return calendarDownload({ entries, stampAt: context.clock.now() });
 }

@@ -2,6 +2,7 @@ import type { Transaction } from 'sequelize';
 import type { ShownTime } from '../../shared/contracts/family-morning';
 import type { Instant } from '../../shared/domain/day';
 import { ageOn } from '../../shared/domain/day';
+import { dayOf } from '../../shared/domain/zone';
 import { wallClockForFamily } from '../../shared/domain/fasting-plan';
 import { familyDay, familyStopTime, familyTime } from '../../shared/languages/family-time';
 import type { Context } from '../context';
@@ -90,6 +91,22 @@ export function protocolSays(words: FamilyWords, site: Site, protocol: StoredPro
   const date = familyDay(signedOn, words.wording.profile).date;
   return words.text('protocol.signed', { clinic: site.name, version, signer: signedBy, date });
 }
+
+/** The protocols that times of these children follow; a child's own plan follows none. */
+export const protocolsOf = (children: readonly MorningPlan[]): Map<number, StoredProtocol> =>
+  new Map(
+    children
+      .filter(({ individualPlan }) => individualPlan === null)
+      .map(({ protocol }) => [protocol.id, protocol]),
+  );
+
+/** Whose own plans these are, and who signed them. */
+export const ownPlansSay = (words: FamilyWords, children: readonly MorningPlan[]): string[] =>
+  children.flatMap(({ callMe, individualPlan, zone }) => {
+    if (!individualPlan) return [];
+    const { date } = familyDay(dayOf(individualPlan.signedAt, zone), words.wording.profile);
+    return [words.text('own-plan.signed', { name: callMe, signer: individualPlan.signedBy, date })];
+  });
 
 export function faceOf({ bornOn, on }: MorningPlan): 'baby' | 'toddler' | 'child' {
   const { months } = ageOn(bornOn, on);

@@ -3,12 +3,20 @@ import type { Day, Instant } from '../../shared/domain/day';
 import { recordViewOnce } from '../access-record/record-view-once';
 import type { Actor } from '../access-record/record';
 import type { FamilyVisitor } from '../auth/current-user';
+import { closedToday } from '../closing/closed-today';
 import type { Context } from '../context';
 import { Problem } from '../http/problem';
 import type { MorningPlan } from '../series/morning-plans';
 import { siteOf } from '../sites/sites';
 import { shownPhone } from '../messages/shown-phone';
-import { faceOf, familyWords, protocolSays, type FamilyWords } from './family-words';
+import {
+  faceOf,
+  familyWords,
+  ownPlansSay,
+  protocolSays,
+  protocolsOf,
+  type FamilyWords,
+} from './family-words';
 import { householdOf, standardPlanOf, type HouseholdNight } from './household-night';
 import { standingOutcome } from './morning-outcome';
 import { sunsSaid } from './next-morning';
@@ -38,7 +46,7 @@ export async function morningQuestionOf(
   const household = await householdOf(db, visitor, now);
   const night =
     on === undefined ? household.next : (household.nights.find((one) => one.on === on) ?? null);
-  if (!night) throw await noQuestion(context, visitor, household.mornings[0]?.siteId);
+  if (!night) throw await noQuestion(context, visitor, household.mornings);
   const words = await familyWords(context, visitor.language, night.site);
   const rows = await toldRows(
     db,
@@ -51,33 +59,39 @@ export async function morningQuestionOf(
     at: now,
   });
   const state = questionState(night, now);
-  const protocols = new Map(night.children.map(({ protocol }) => [protocol.id, protocol]));
+  const protocols = protocolsOf(night.children);
   return {
     now: new Date(now).toISOString(),
     on: night.on,
     state,
-    stateSays: stateSays(night, state, words),
+    stateSays:
+      closedToday(household.mornings, now, words)?.heading ?? stateSays(night, state, words),
     skies: skiesOf(night.on, night.zone),
     ...sunsSaid(household, words),
     questions: night.children.map((plan) => questionOf(plan, night, words, now)),
     saved: savedWords(night, words),
     changes: changesOf(night, words, now),
     outcome: standingOutcome(night, rows, words),
-    protocolSays: [...protocols.values()]
-      .map((protocol) => protocolSays(words, night.site, protocol))
-      .join(' '),
+    protocolSays: [
+      ...[...protocols.values()].map((protocol) => protocolSays(words, night.site, protocol)),
+      ...ownPlansSay(words, night.children),
+    ].join(' '),
   };
 }
 
 async function noQuestion(
   context: Context,
   visitor: FamilyVisitor,
-  siteId: number | undefined,
+  mornings: readonly MorningPlan[],
 ): Promise<Problem> {
-  const site = siteId === undefined ? null : await siteOf(context.db, siteId);
+  const [first] = mornings;
+  const site = first ? await siteOf(context.db, first.siteId) : null;
   const words = await familyWords(context, visitor.language, site);
   const phone = site?.phone ?? '';
-  return new Problem(404, 'no-question', words.text('question.none', { phone }), { phone });
+  const shown = site ? shownPhone(phone, site.country) : '';
+  const closed = closedToday(mornings, context.clock.now(), words);
+  const says = closed?.heading ?? words.text('question.none', { phone: shown });
+  return new Problem(404, 'no-question', says, { phone, detail: closed?.subheading });
 }
 
 function stateSays(
@@ -146,23 +160,30 @@ function timesOf(plan: MorningPlan, night: HouseholdNight, now: Instant): Instan
 
 function pictureOf(answer: string, { feeding }: MorningPlan): string {
   if (answer === 'nothing') return 'solid-food-not';
-  if (answer === 'sip') return 'water';
-  if (answer === 'unsure') return 'call-us';
+  if (answer === 'sip') return 'sip';
+  if (answer === 'unsure') return 'unsure';
   if (feeding === 'family-food') return 'solid-food';
   return feeding === 'formula' ? 'formula-bottle' : 'breast-feeding';
 }
 
 function savedWords(night: HouseholdNight, words: FamilyWords): MorningQuestion['saved'] {
-  const { phone } = night.site;
+  const phone = shownPhone(night.site.phone, night.site.country);
   return {
     heading: words.text('saved.heading'),
     lines: [
       words.text('saved.sends-itself'),
-      words.text('saved.still-nothing', { children: words.list(night.children) }),
+      ...stillNothing(night, words),
       words.text('saved.call', { phone }),
     ],
     textInstead: words.text('saved.text-instead', { phone }),
   };
+}
+
+/** A child whose own plan nobody has composed is never told to go on without food. */
+function stillNothing(night: HouseholdNight, words: FamilyWords): string[] {
+  const children = night.children.filter((child) => standardPlanOf(child) !== null);
+  if (children.length === 0) return [];
+  return [words.text('saved.still-nothing', { children: words.list(children) })];
 }
 
 function changesOf(

@@ -7,12 +7,21 @@ import { familyDay } from '../../shared/languages/family-time';
 import { recordViewOnce } from '../access-record/record-view-once';
 import type { Actor } from '../access-record/record';
 import type { FamilyVisitor } from '../auth/current-user';
+import { closedToday } from '../closing/closed-today';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import type { MorningPlan } from '../series/morning-plans';
+import { sayItBackCard } from '../say-it-back/say-it-back';
 import { siteOf, type Site } from '../sites/sites';
 import { shownPhone } from '../messages/shown-phone';
-import { faceOf, familyWords, protocolSays, type FamilyWords } from './family-words';
+import {
+  faceOf,
+  familyWords,
+  ownPlansSay,
+  protocolSays,
+  protocolsOf,
+  type FamilyWords,
+} from './family-words';
 import {
   householdOf,
   standardPlanOf,
@@ -44,7 +53,14 @@ export async function nextMorningOf(
   const page = household.next
     ? await planned(db, household, household.next, visitor, words)
     : nothingPlanned(household, site, words);
-  return { now: new Date(now).toISOString(), ...page, draftSays: draftSays(words) };
+  const closed = closedToday(household.mornings, now, words);
+  return {
+    now: new Date(now).toISOString(),
+    ...page,
+    ...closed,
+    draftSays: draftSays(words),
+    sayItBack: closed ? null : await sayItBackCard(context, household, words, now),
+  };
 }
 
 /** Only the texts that the page really uses count. */
@@ -52,7 +68,7 @@ function draftSays(words: FamilyWords): string | null {
   return words.wording.draftNotice(Object.keys(words.used()));
 }
 
-type Page = Omit<NextMorning, 'now' | 'draftSays'>;
+type Page = Omit<NextMorning, 'now' | 'draftSays' | 'sayItBack'>;
 
 async function planned(
   db: Sequelize,
@@ -63,7 +79,7 @@ async function planned(
 ): Promise<Page> {
   const steps = nightPath(night, words);
   const { firstArrivalAt, site } = night;
-  const protocols = new Map(night.children.map(({ protocol }) => [protocol.id, protocol]));
+  const protocols = protocolsOf(night.children);
   return {
     state: 'planned',
     heading: words.text('next-morning.heading', {
@@ -99,9 +115,10 @@ async function planned(
       opensAt: iso(night.questionOpensAt),
       closesAt: iso(night.questionClosesAt),
     },
-    protocolSays: [...protocols.values()]
-      .map((protocol) => protocolSays(words, site, protocol))
-      .join(' '),
+    protocolSays: [
+      ...[...protocols.values()].map((protocol) => protocolSays(words, site, protocol)),
+      ...ownPlansSay(words, night.children),
+    ].join(' '),
   };
 }
 
@@ -203,7 +220,7 @@ function bringOf(children: readonly MorningPlan[], words: FamilyWords): NextMorn
     ['medicine-bottle', 'bring.medicine'],
     ['comfort-toy', 'bring.comfort'],
     ...(children.some((plan) => monthsOf(plan) < monthsInDiapers)
-      ? [['blanket', 'bring.diapers'] as const]
+      ? [['diaper', 'bring.diapers'] as const]
       : []),
     ['papers', 'bring.papers'],
   ]);

@@ -59,7 +59,7 @@ function untilTheStops(night: HouseholdNight, words: FamilyWords): Moment[] {
   ];
   for (const at of instants(children, (child) => standardPlanOf(child)?.lastFeedAt ?? null)) {
     const feeding = children.filter((child) => standardPlanOf(child)?.lastFeedAt === at);
-    const stopAt = Math.min(...feeding.map((child) => standardPlanOf(child)?.stopAt ?? at));
+    const stopAt = Math.min(...feeding.map((child) => standardPlanOf(child)?.mealStopAt ?? at));
     moments.push({
       at,
       says: words.text('moment.last-feed', {
@@ -69,13 +69,13 @@ function untilTheStops(night: HouseholdNight, words: FamilyWords): Moment[] {
       stepKeyLike: 'last-feed',
     });
   }
-  for (const at of instants(children, (child) => standardPlanOf(child)?.stopAt ?? null))
+  for (const at of instants(children, (child) => standardPlanOf(child)?.nothingAt ?? null))
     moments.push(afterStop(at, children, words));
   return moments;
 }
 
 function afterStop(at: Instant, children: readonly MorningPlan[], words: FamilyWords): Moment {
-  const stopOf = (child: MorningPlan): Instant => standardPlanOf(child)?.stopAt ?? at;
+  const stopOf = (child: MorningPlan): Instant => standardPlanOf(child)?.nothingAt ?? at;
   const empty = children.filter((child) => stopOf(child) <= at);
   const full = children.filter((child) => stopOf(child) > at);
   const stepKeyLike = 'stop';
@@ -108,7 +108,7 @@ function fromGettingUp(night: HouseholdNight, words: FamilyWords): Moment[] {
       says: words.text('moment.answer', { time: words.time(night.callListAt) }),
       stepKeyLike: 'answer',
     },
-    { at: leaveAt, says: words.text('moment.leave', { children: names }), stepKeyLike: 'leave' },
+    ...leaving(children, leaveAt, words),
     {
       at: arriveSoonAt,
       says: words.text('moment.arrive', { door: site.door, time: words.time(firstArrivalAt) }),
@@ -125,6 +125,14 @@ function fromGettingUp(night: HouseholdNight, words: FamilyWords): Moment[] {
       stepKeyLike: 'eat-again',
     },
   ];
+}
+
+/** A child whose own plan nobody has composed is never told to go on without food. */
+function leaving(children: readonly MorningPlan[], at: Instant, words: FamilyWords): Moment[] {
+  const fasting = children.filter((child) => standardPlanOf(child) !== null);
+  if (fasting.length === 0) return [];
+  const says = words.text('moment.leave', { children: words.list(fasting) });
+  return [{ at, says, stepKeyLike: 'leave' }];
 }
 
 const instants = (

@@ -6,6 +6,8 @@ import { shownPhone } from '../messages/shown-phone';
 import type { FamilyWords } from './family-words';
 import { standardPlanOf, type HouseholdNight } from './household-night';
 import { feedPictures, groupedBy, keyOf, standardChildren, type Step } from './night-steps';
+import { itemStops, stops } from './night-stops';
+import { fallenFeeds, medicines, ownLines, wakeLines } from './own-plan-steps';
 import { partAt } from './sky';
 
 const minute = 60_000;
@@ -17,7 +19,10 @@ export function nightPath(night: HouseholdNight, words: FamilyWords): PathStep[]
     supper(night, words),
     ...lastFood(night, words),
     ...lastFeeds(night, words),
+    ...fallenFeeds(night, words),
+    ...itemStops(night, words),
     ...stops(night, words),
+    ...medicines(night, words),
     ...gettingUp(night, words),
     arrive(night, words),
     ...eatAgain(night, words),
@@ -47,8 +52,11 @@ const kinds = [
   'supper',
   'last-food',
   'last-feed',
+  'night-feed',
+  'item-stop',
   'stop',
   'wake',
+  'medicine',
   'answer',
   'leave',
   'arrive',
@@ -59,8 +67,8 @@ const order = (key: string): number => kinds.findIndex((kind) => key.startsWith(
 function mouthAt(child: MorningPlan, step: Step, isFirst: boolean): Mouth {
   const plan = standardPlanOf(child);
   if (!plan) return 'none';
-  if (step.at < plan.stopAt) return isFirst ? 'starts' : 'full';
-  if (step.at === plan.stopAt)
+  if (step.at < plan.nothingAt) return isFirst ? 'starts' : 'full';
+  if (step.at === plan.nothingAt)
     return step.key.startsWith('stop')
       ? 'ends'
       : order(step.key) < order('stop')
@@ -90,7 +98,8 @@ function lastFood(night: HouseholdNight, words: FamilyWords): Step[] {
   const groups = groupedBy(standardChildren(night), (child) => {
     const plan = standardPlanOf(child);
     if (!plan || plan.isInfant) return null;
-    return Math.min(Math.max(usual, plan.earliestLastMealAt), plan.stopAt - 30 * minute);
+    const mealAt = plan.lastMealAt ?? Math.max(usual, plan.earliestLastMealAt);
+    return Math.min(mealAt, plan.mealStopAt - 30 * minute);
   });
   return groups.map(({ at, children }) => ({
     key: keyOf('last-food', children),
@@ -120,52 +129,14 @@ function lastFeeds(night: HouseholdNight, words: FamilyWords): Step[] {
         title: words.text(`step.last-feed.title.${first.feeding}`, {
           children: words.list(children),
         }),
-        lines: [words.text('step.last-feed.finish-by', { time: words.stopTime(plan.stopAt) })],
+        lines: [
+          words.text('step.last-feed.finish-by', { time: words.stopTime(plan.mealStopAt) }),
+          ...ownLines(children, 'last-feed', words),
+        ],
         pictures: feedPictures(children),
         children,
       },
     ];
-  });
-}
-
-function stops(night: HouseholdNight, words: FamilyWords): Step[] {
-  const groups = groupedBy(
-    standardChildren(night),
-    (child) => standardPlanOf(child)?.stopAt ?? null,
-  );
-  const lastAt = Math.max(...groups.map(({ at }) => at));
-  return groups.map(({ at, children }) => {
-    const names = words.list(children);
-    const feedings = [...new Set(children.map(({ feeding }) => feeding))];
-    const hasInfant = children.some((child) => standardPlanOf(child)?.isInfant);
-    const hasOlder = children.some((child) => !standardPlanOf(child)?.isInfant);
-    return {
-      key: keyOf('stop', children),
-      at,
-      isStop: true,
-      isLoud: true,
-      title: words.text('step.stop.title', { children: names }),
-      lines: [
-        ...feedings.map((feeding) => words.text(`step.stop.${feeding}`)),
-        words.text('step.stop.water'),
-        words.text('step.stop.medicine'),
-        ...(hasInfant ? [words.text('step.stop.pacifier')] : []),
-        ...(hasOlder
-          ? [words.text('step.stop.before', { time: words.stopTime(at), children: names })]
-          : []),
-        ...(at === lastAt
-          ? [words.text('step.stop.adults', { count: night.children.length })]
-          : []),
-      ],
-      pictures: [
-        ...(hasOlder ? ['solid-food-not', 'cows-milk-not'] : []),
-        ...feedPictures(children)
-          .map((name) => `${name}-not`)
-          .filter((name) => name !== 'solid-food-not'),
-        'water-not',
-      ],
-      children,
-    };
   });
 }
 
@@ -181,7 +152,7 @@ function gettingUp(night: HouseholdNight, words: FamilyWords): Step[] {
       key: 'wake',
       at: leaveAt - sample.readyMinutes * minute,
       title: words.text('step.wake.title', { children: names }),
-      lines: [words.text('step.wake.line')],
+      lines: [words.text('step.wake.line'), ...wakeLines(children, words)],
       pictures: ['wake', 'bring-food-for-after'],
       children,
     },
@@ -200,7 +171,7 @@ function gettingUp(night: HouseholdNight, words: FamilyWords): Step[] {
       key: 'leave',
       at: leaveAt,
       title: words.text('step.leave.title', { children: names }),
-      lines: [words.text('step.leave.line')],
+      lines: standardChildren(night).length > 0 ? [words.text('step.leave.line')] : [],
       pictures: ['leave-home'],
       children,
     },
@@ -223,7 +194,8 @@ function arrive(night: HouseholdNight, words: FamilyWords): Step {
       ...(first && then.length > 0
         ? [words.text('step.arrive.order', { first: first.callMe, then: words.list(then) })]
         : []),
-      words.text('step.arrive.line'),
+      ...(standardChildren(night).length > 0 ? [words.text('step.arrive.line')] : []),
+      ...ownLines(inOrder, 'arrive', words),
     ],
     pictures: ['arrive'],
     children: night.children,

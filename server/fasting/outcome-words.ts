@@ -176,9 +176,10 @@ export function toldUsSays(plan: MorningPlan, told: ToldAnswer, words: FamilyWor
   const standard = standardPlanOf(plan);
   switch (answer) {
     case 'nothing':
-      return standard
+      if (!standard) return words.text('told-us.nothing-individual', { name });
+      return standard.allSame
         ? words.text('told-us.nothing', { name, time: words.stopTime(standard.stopAt) })
-        : words.text('told-us.nothing-individual', { name });
+        : words.text('told-us.nothing-items', { name });
     case 'unsure':
       return words.text('told-us.unsure', { name });
     case 'sip':
@@ -197,9 +198,11 @@ export function questionWords(
   const name = plan.callMe;
   const standard = standardPlanOf(plan);
   return {
-    asks: standard
-      ? words.text('question.asks', { name, time: words.stopTime(standard.stopAt) })
-      : words.text('question.asks-individual', { name }),
+    asks: !standard
+      ? words.text('question.asks-individual', { name })
+      : standard.allSame
+        ? words.text('question.asks', { name, time: words.stopTime(standard.stopAt) })
+        : words.text('question.asks-items', { name }),
     choices: [
       { answer: 'nothing', says: words.text('question.choice.nothing') },
       { answer: 'sip', says: words.text('question.choice.sip') },

@@ -207,6 +207,7 @@ async function keepAnswer(
     lastIntakeAt: answer.lastIntakeAt,
     verdict: check?.ok ? check.verdict : null,
     outcome: check?.ok ? check.outcome : household.kind,
+    explanation: check?.ok ? check.explanation : null,
     said: {
       toldAt: new Date(toldAt).toISOString(),
       question: { key: 'question.asks', says: asks },

@@ -1,6 +1,7 @@
 import type { Sequelize, Transaction } from 'sequelize';
 import type { FastingAnswer, OutcomeKind } from '../../shared/contracts/family-morning';
 import type { Instant } from '../../shared/domain/day';
+import type { Explanation } from '../../shared/domain/explanation';
 import { select } from '../database/connection';
 
 /** What was asked, chosen and told, word for word: stays readable whatever becomes of the wording. */
@@ -77,6 +78,7 @@ export interface NewToldRow {
   readonly lastIntakeAt: Instant | null;
   readonly verdict: string | null;
   readonly outcome: string;
+  readonly explanation?: Explanation | null;
   readonly said: Said;
   readonly language: string;
   readonly deviceAt: Instant | null;
@@ -90,13 +92,14 @@ export async function keepToldRow(
 ): Promise<void> {
   await db.query(
     `INSERT INTO fasting_checks (morning_id, family_member_id, source, submission_key, answer, last_intake_at, verdict,
-       outcome, said, language, device_at, received_at)
-     VALUES (:morningId, :familyMemberId, :source, :submissionKey, :answer, :lastIntakeAt, :verdict, :outcome, :said,
+       explanation, outcome, said, language, device_at, received_at)
+     VALUES (:morningId, :familyMemberId, :source, :submissionKey, :answer, :lastIntakeAt, :verdict, :explanation, :outcome, :said,
        :language, :deviceAt, :receivedAt)`,
     {
       replacements: {
         ...row,
         lastIntakeAt: row.lastIntakeAt === null ? null : new Date(row.lastIntakeAt),
+        explanation: row.explanation ? JSON.stringify(row.explanation) : null,
         said: JSON.stringify(row.said),
         deviceAt: row.deviceAt === null ? null : new Date(row.deviceAt),
         receivedAt: new Date(row.receivedAt),

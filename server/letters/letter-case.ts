@@ -6,6 +6,7 @@ import { dueOn, type LaboratoryProfile } from '../../shared/domain/specimen-cloc
 import { dayOf } from '../../shared/domain/zone';
 import { select } from '../database/connection';
 import { shownPhone } from '../messages/shown-phone';
+import { idInForce } from '../protocols/protocols';
 import { seriesFactsOf, type SeriesFacts } from '../results/series-results';
 import type { LetterFacts } from './letter-parts';
 
@@ -117,6 +118,13 @@ function lastAnswerOn(series: SeriesFacts, row: CaseRow): string | null {
   return days.sort().at(-1) ?? null;
 }
 
+/** In force on the day of the last morning, whose answer comes last. */
+const profileId = idInForce('laboratory_profiles', {
+  siteId: 'series.site_id',
+  on: '(SELECT MAX(planned_on) FROM mornings WHERE mornings.series_id = series.id)',
+  otherwise: 'series.laboratory_profile_id',
+});
+
 /** @returns null when the series does not exist at this site. */
 export async function letterCaseOf(
   db: Sequelize,
@@ -131,7 +139,7 @@ export async function letterCaseOf(
     `SELECT children.full_name, children.call_me, children.born_on, sites.name AS site_name, sites.zone, sites.country, sites.phone,
        sites.emergency_number, laboratory_profiles.body AS profile
      FROM series JOIN children ON children.id = series.child_id JOIN sites ON sites.id = series.site_id
-       JOIN laboratory_profiles ON laboratory_profiles.id = series.laboratory_profile_id
+       JOIN laboratory_profiles ON laboratory_profiles.id = ${profileId}
      WHERE series.id = :seriesId`,
     { seriesId },
     transaction,

@@ -29,9 +29,9 @@ export function letterPage({ body, language, recipient, letterhead }: LetterPage
     language,
     dir: languageOf(language as LanguageId).dir,
     title: body.title,
-    body: `<header><p><strong>${apart(name ?? '')}</strong><br>${rest.map(apart).join('<br>')}</p>
+    body: `<div class="top"><header><p><strong>${apart(name ?? '')}</strong><br>${rest.map(apart).join('<br>')}</p>
       <p>${escapeHtml(body.dateSays)}</p></header>
-      <div class="address"><p>${apart(recipient)}</p></div>
+      <div class="address"><p>${apart(recipient)}</p></div></div>
       <main><h1>${escapeHtml(body.title)}</h1>${paragraphs.join('')}</main>`,
   });
 }

@@ -5,10 +5,10 @@ import { dayOf } from '../../shared/domain/zone';
 import { familyDay } from '../../shared/languages/family-time';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
-import { verifyPassword } from '../auth/passwords';
+import { checkPasswordAgain } from '../auth/password-again';
 import type { Context } from '../context';
 import { inTransaction, select } from '../database/connection';
-import { invalid, notFound, Problem } from '../http/problem';
+import { notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
 import { clinicWording } from '../wording/clinic-words';
 import type { Wording } from '../wording/render';
@@ -44,20 +44,6 @@ export function letterBody(wording: Wording, facts: LetterFacts, choices: Choice
       .map(({ key, heading, text, tone }) => ({ key, heading, text: text ?? '', tone })),
     wordingVersions: wording.versions(keys),
   };
-}
-
-async function checkPassword(
-  context: Context,
-  staff: StaffMember,
-  password: string,
-): Promise<void> {
-  const [row] = await select<{ password_hash: string | null }>(
-    context.db,
-    'SELECT password_hash FROM staff WHERE id = :id',
-    { id: staff.id },
-  );
-  if (!(await verifyPassword(row?.password_hash ?? null, password)))
-    throw invalid([{ path: 'password', message: 'This is not your password.' }]);
 }
 
 /** What a letter was made from; the same choice signed twice is one letter. */
@@ -177,7 +163,7 @@ export async function signLetter(
   seriesId: number,
   request: z.output<typeof signLetterRequest>,
 ): Promise<LetterSigned> {
-  await checkPassword(context, staff, request.password);
+  await checkPasswordAgain(context, staff, request.password);
   const now = context.clock.now();
   const signer = await signerName(context, staff.id);
   return inTransaction(context.db, async (transaction) => {

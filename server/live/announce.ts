@@ -2,7 +2,15 @@ import type { Sequelize, Transaction } from 'sequelize';
 
 /** What may change under an open screen. */
 export type Topic =
-  'mornings' | 'calls' | 'children' | 'specimens' | 'results' | 'letters' | 'messages' | 'clock';
+  | 'mornings'
+  | 'calls'
+  | 'children'
+  | 'specimens'
+  | 'results'
+  | 'letters'
+  | 'messages'
+  | 'alerts'
+  | 'clock';
 
 /**
  * Notes a change in the transaction that makes it. Open screens hear the topic and the id and fetch again; nothing about

@@ -1,5 +1,6 @@
 import type { Transaction } from 'sequelize';
 import { addDays, instantOf } from '../../shared/domain/zone';
+import { isQuiet } from '../../shared/domain/quiet-hours';
 import { familyTime } from '../../shared/languages/family-time';
 import type { Context } from '../context';
 import { calendarFile } from '../outbox/calendar-file';
@@ -7,7 +8,6 @@ import { enqueue } from '../outbox/enqueue';
 import { morningPlansOf, type MorningPlan } from '../series/morning-plans';
 import { canSpeak, loadWording } from '../wording/render';
 import { noting } from './draft-message';
-import { isQuiet } from './quiet-hours';
 import { recipientsOf, type Recipient } from './recipients';
 import { siteParams } from './tell-member';
 

@@ -1,18 +1,24 @@
 import { createHash } from 'node:crypto';
+import type { MessageKind } from '../../shared/domain/message-plan';
 import type { Instant } from '../../shared/domain/zone';
 import { familyStopTime } from '../../shared/languages/family-time';
 import type { Wording, WordingParams } from '../wording/render';
 
 /** A message of a household and day before it is queued. */
 export interface DraftMessage {
-  readonly kind: 'evening' | 'reminder' | 'morning';
+  readonly kind: MessageKind;
   readonly channel: 'sms' | 'mail';
   readonly familyMemberId: number;
   readonly address: string;
   readonly language: string;
+  readonly isWithoutConsent: boolean;
   readonly wordingVersions: Readonly<Record<string, number>>;
   readonly subject: string | null;
   readonly body: string;
+  /** The same told as news, for who has heard something else before; null where it needs no other words. */
+  readonly bodyOfNews: string | null;
+  /** What it says apart from its words: other facts are told again, other words are not. */
+  readonly facts: readonly (string | number | null)[];
   readonly callReason: string | null;
   readonly dueAt: number;
   readonly lastUsefulAt: number;
@@ -43,12 +49,27 @@ export function stopTimeSays(noted: NotedWording, stopAt: Instant, zone: string)
   return occurs === 'once' ? time : noted.text(`time.${occurs}`, { time });
 }
 
+const hashOf = (content: unknown): string =>
+  createHash('sha256').update(JSON.stringify(content)).digest('hex').slice(0, 8);
+
+/** What a message tells to whom: the same facts in other words are the same. */
+export const factsOf = ({ address, facts }: DraftMessage): string => hashOf([address, facts]);
+
 /**
  * One key for each content: a night planned again with the same outcome queues nothing, another content replaces what
- * still waits.
+ * still waits. `news` counts what the person heard before with other facts, so that a plan that goes back to what it
+ * was is told once more.
  */
-export function dedupeKeyOf(householdId: number, on: string, draft: DraftMessage): string {
-  const content = [draft.channel, draft.address, draft.subject ?? '', draft.body, draft.dueAt];
-  const hash = createHash('sha256').update(JSON.stringify(content)).digest('hex').slice(0, 8);
-  return `${draft.kind}:${householdId}:${on}:${draft.familyMemberId}:${draft.channel}:${hash}`;
+export function dedupeKeyOf(
+  householdId: number,
+  on: string,
+  draft: DraftMessage,
+  news: number,
+): string {
+  const words = hashOf([draft.subject ?? '', draft.body, draft.dueAt]);
+  const content = `${factsOf(draft)}-${words}${news > 0 ? `-${news}` : ''}`;
+  return `${draft.kind}:${householdId}:${on}:${draft.familyMemberId}:${draft.channel}:${content}`;
 }
+
+/** The facts in a key of `dedupeKeyOf`. */
+export const factsInKey = (key: string): string => key.split(':')[5]?.split('-')[0] ?? '';

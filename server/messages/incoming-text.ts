@@ -5,6 +5,8 @@ export interface IncomingText {
   /** E.164. */
   readonly from: string;
   readonly body: string;
+  /** Pictures that came with it; they are not kept. */
+  readonly pictures?: number;
   /** Epoch milliseconds of the business clock. */
   readonly receivedAt: number;
 }

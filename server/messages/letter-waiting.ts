@@ -1,7 +1,7 @@
 import type { Transaction } from 'sequelize';
 import type { Context } from '../context';
 import { select } from '../database/connection';
-import { recipientsOf } from './recipients';
+import { recipientsOf, type Recipient } from './recipients';
 import { tellMember } from './tell-member';
 
 /** Until the reminder of an unread letter takes over. */
@@ -26,13 +26,21 @@ export async function tellLetterWaits(
   );
   const familyMemberIds = rows.map((row) => row.family_member_id);
   for (const recipient of await recipientsOf(db, { familyMemberIds }, transaction))
-    await tellMember(context, transaction, recipient, {
+    await tellMember(context, transaction, forLetters(recipient), {
       kind: 'letter-waits',
       prefix: 'message.letter-waits',
       params: { url: `${settings.origin}/${recipient.language}/letters` },
       dedupe: `letter-waits:${letterId}`,
       callReason: 'letter-notice-failed',
+      personFirst: 'letter-by-person',
       childId: rows[0]?.child_id ?? null,
       usefulForMs,
     });
 }
+
+/** The same person as far as letters were agreed to. */
+export const forLetters = (recipient: Recipient): Recipient => ({
+  ...recipient,
+  mayText: recipient.mayTextLetters,
+  mayMail: recipient.mayMailLetters,
+});

@@ -35,6 +35,13 @@ export function stateSays(words: ClinicWords, said: SaidState): string {
   }
 }
 
+export const kindSays = (words: ClinicWords, kind: string): string =>
+  words.text(
+    words.has(`clinic.message.kind.${kind}`)
+      ? `clinic.message.kind.${kind}`
+      : 'clinic.message.kind.other',
+  );
+
 const codeKinds: ReadonlySet<string> = new Set(['code', 'sign-in-code']);
 
 /**
@@ -52,10 +59,12 @@ export function healthSays(
     readonly waiting: number;
     readonly oldestDueAt: number | null;
     readonly isStuck: boolean;
+    readonly failures: number;
     readonly now: number;
   },
 ): string {
-  const { waiting, oldestDueAt, isStuck, now } = health;
+  const { waiting, oldestDueAt, isStuck, failures, now } = health;
+  if (!isStuck && failures > 0) return words.text('clinic.outbox.failures', { count: failures });
   if (waiting === 0 || oldestDueAt === null) return words.text('clinic.outbox.all-out');
   const minutes = Math.max(0, Math.floor((now - oldestDueAt) / 60_000));
   return words.text(isStuck ? 'clinic.outbox.stuck' : 'clinic.outbox.on-the-way', {

@@ -1,11 +1,70 @@
-import { addDays, instantOf, millisecondsPerMinute, type Instant } from '../../shared/domain/zone';
+import {
+  messagePlan,
+  nightMoments,
+  type MessagePlan,
+  type MessageTimes,
+  type NightMoments,
+  type PlannedMessage,
+  type PlannedMorning,
+} from '../../shared/domain/message-plan';
+import { inShortAlphabet, messageSegments } from '../../shared/domain/message-segments';
+import { addDays, millisecondsPerMinute, type Instant } from '../../shared/domain/zone';
 import { familyDay, familyTime } from '../../shared/languages/family-time';
 import type { MorningPlan } from '../series/morning-plans';
+import type { Site } from '../sites/sites';
 import type { Wording } from '../wording/render';
 import { noting, stopTimeSays, type DraftMessage, type NotedWording } from './draft-message';
-import { isQuiet, quietFrom } from './quiet-hours';
+import { stopLines } from './stop-lines';
 import type { Recipient } from './recipients';
 import { shownPhone } from './shown-phone';
+
+export type NightPlans = readonly [MorningPlan, ...MorningPlan[]];
+
+/** How long the household's page stays open after the last arrival. */
+const linkHours = 2;
+export const linkExpiresAt = ({ lastArrivalAt }: Pick<NightMoments, 'lastArrivalAt'>): Instant =>
+  lastArrivalAt + linkHours * 60 * millisecondsPerMinute;
+
+export const messageTimesOf = (site: Site): MessageTimes => ({
+  zone: site.zone,
+  aheadDays: site.aheadTextDays,
+  aheadTime: site.aheadTextTime,
+  eveningTime: site.eveningTextTime,
+  questionMinutesBefore: site.morningQuestionMinutesBefore,
+  nudgeMinutesBefore: site.nudgeMinutesBefore,
+  callListMinutesBefore: site.callListMinutesBefore,
+});
+
+const plannedMorning = (morning: MorningPlan): PlannedMorning => {
+  const { plan, arrivalAt, travelMinutes, readyMinutes } = morning;
+  const wakeAt = arrivalAt - (travelMinutes + readyMinutes) * millisecondsPerMinute;
+  const isStandard = plan.kind === 'standard';
+  return {
+    arrivalAt,
+    stopAt: isStandard ? plan.stopAt : null,
+    reminderAt: isStandard ? plan.stopReminderAt : null,
+    isInfant: isStandard && plan.isInfant,
+    wakeAt,
+    nightCarerId: morning.nightCarerFamilyMemberId,
+    escortId: morning.escortFamilyMemberId,
+  };
+};
+
+export function nightTimes(plans: NightPlans): NightMoments {
+  const [{ site, on }] = plans;
+  return nightMoments(plans.map(plannedMorning), on, messageTimesOf(site));
+}
+
+/** The plan of the night's messages from the rows. @param plans youngest child first. */
+export function planOfNight(
+  plans: NightPlans,
+  household: readonly Recipient[],
+  more: { readonly isAnswered: boolean; readonly followsMorning: boolean },
+): MessagePlan<Recipient> {
+  const [{ site, on }] = plans;
+  const mornings = plans.map(plannedMorning);
+  return messagePlan({ on, mornings, household, times: messageTimesOf(site), ...more });
+}
 
 /** What one person is written about one night and morning. */
 export interface NightFor {
@@ -13,73 +72,45 @@ export interface NightFor {
   readonly wording: Wording;
   /** The household's page of that morning. */
   readonly url: string;
-  /** Planned mornings of the household on that day, youngest child first. */
-  readonly plans: readonly [MorningPlan, ...MorningPlan[]];
-  readonly hearsEvening: boolean;
-  readonly hearsMorning: boolean;
-  /** Somebody has answered for every child already. */
-  readonly isAnswered: boolean;
+  readonly plans: NightPlans;
+  readonly moments: NightMoments;
 }
 
-export interface NightTimes {
-  readonly eveningAt: Instant;
-  readonly questionAt: Instant;
-  readonly firstArrivalAt: Instant;
-  readonly lastArrivalAt: Instant;
-  /** The earliest stop; for a child with a plan of its own the time to get up. */
-  readonly firstStopAt: Instant;
-}
-
-/** How long the household's page stays open after the last arrival. */
-const linkHours = 2;
-export const linkExpiresAt = ({ lastArrivalAt }: NightTimes): Instant =>
-  lastArrivalAt + linkHours * 60 * millisecondsPerMinute;
-
-export function nightTimes(plans: readonly [MorningPlan, ...MorningPlan[]]): NightTimes {
-  const [{ site, on }] = plans;
-  const arrivals = plans.map((plan) => plan.arrivalAt);
-  const firstArrivalAt = Math.min(...arrivals);
+/** A planned message in the words of its language. */
+export function drafted(planned: PlannedMessage, night: NightFor): DraftMessage {
+  const { kind, channel, familyMemberId, address, callReason, dueAt, lastUsefulAt } = planned;
+  const { language, isWithoutConsent } = night.recipient;
+  const noted = noting(night.wording);
+  const { body, bodyOfNews = null, ...written } = writers[kind](noted, planned, night);
+  const spelled = (text: string): string => (channel === 'sms' ? inShortAlphabet(text) : text);
   return {
-    eveningAt: instantOf({ on: addDays(on, -1), time: site.eveningTextTime, zone: site.zone }),
-    questionAt: firstArrivalAt - site.morningQuestionMinutesBefore * millisecondsPerMinute,
-    firstArrivalAt,
-    lastArrivalAt: Math.max(...arrivals),
-    firstStopAt: Math.min(...plans.map(stopOrWakeAt)),
+    ...{ kind, channel, familyMemberId, address, callReason, dueAt, lastUsefulAt, language },
+    isWithoutConsent: channel === 'sms' && isWithoutConsent,
+    ...written,
+    body: spelled(body),
+    bodyOfNews: bodyOfNews === null ? null : spelled(bodyOfNews),
+    wordingVersions: noted.wording.versions(noted.used()),
   };
 }
 
-function stopOrWakeAt({ plan, arrivalAt, travelMinutes, readyMinutes }: MorningPlan): Instant {
-  if (plan.kind === 'standard') return plan.stopAt;
-  return arrivalAt - (travelMinutes + readyMinutes) * millisecondsPerMinute;
-}
+type Written = Pick<DraftMessage, 'subject' | 'body' | 'facts'> &
+  Partial<Pick<DraftMessage, 'bodyOfNews'>>;
+type Writer = (noted: NotedWording, planned: PlannedMessage, night: NightFor) => Written;
 
-/** Every text and e-mail for this person; texts that quiet hours forbid are left out. */
-export function messagesFor(night: NightFor): DraftMessage[] {
-  const times = nightTimes(night.plans);
-  return [
-    ...(night.hearsEvening || asksInTheEvening(night, times) ? evening(night, times) : []),
-    ...(night.hearsEvening ? reminders(night, times) : []),
-    ...(night.hearsMorning && !night.isAnswered ? morning(night, times) : []),
-  ];
-}
+const writers: Readonly<Record<PlannedMessage['kind'], Writer>> = {
+  ahead,
+  evening,
+  reminder,
+  morning,
+  nudge,
+};
 
-/** Whether the morning question may go to this person as a text when it is due. */
-function getsMorningText({ recipient, plans }: NightFor, times: NightTimes): boolean {
-  const [{ zone }] = plans;
-  return recipient.mayText && !isQuiet(times.questionAt, zone, recipient.mayTextEarly);
-}
-
-/** Who answers in the morning and may not be texted then is asked the evening before. */
-const asksInTheEvening = (night: NightFor, times: NightTimes): boolean =>
-  night.hearsMorning && !getsMorningText(night, times);
-
-function evening(night: NightFor, times: NightTimes): DraftMessage[] {
-  const { recipient, wording, plans, url } = night;
+/** What every message of the night may say. */
+function commonOf(noted: NotedWording, { plans, moments, url }: NightFor) {
   const [{ site, zone, on }] = plans;
-  const { profile } = wording;
-  const arrival = familyTime(times.firstArrivalAt, zone, profile);
-  const night_ = { from: familyDay(addDays(on, -1), profile).weekday, to: arrival.weekday };
-  const common = {
+  const { profile } = noted.wording;
+  const arrival = familyTime(moments.firstArrivalAt, zone, profile);
+  return {
     clinic: site.shortName,
     phone: shownPhone(site.phone, site.country),
     url,
@@ -87,102 +118,90 @@ function evening(night: NightFor, times: NightTimes): DraftMessage[] {
     date: arrival.date,
     time: arrival.time,
     door: site.door,
-    ...night_,
+    address: site.address,
+    from: familyDay(addDays(on, -1), profile).weekday,
+    to: arrival.weekday,
   };
-  const compose = (build: (noted: NotedWording, lines: string) => Composed): Written => {
-    const noted = noting(wording);
-    const lines = plans.map((plan) => eveningLine(noted, plan)).join('\n');
-    return { ...build(noted, lines), ...versionsOf(noted) };
+}
+
+const factOfStop = ({ plan }: MorningPlan): number | null =>
+  plan.kind === 'standard' ? plan.stopAt : null;
+
+function ahead(noted: NotedWording, { channel }: PlannedMessage, night: NightFor): Written {
+  const common = commonOf(noted, night);
+  const facts = ['ahead', night.moments.firstArrivalAt, common.door];
+  if (channel === 'mail')
+    return {
+      subject: noted.text('message.ahead.subject', common),
+      body: noted.text('message.ahead.mail', common),
+      bodyOfNews: noted.text('message.changed.mail', common),
+      facts,
+    };
+  return {
+    subject: null,
+    body: noted.text('message.ahead.text', common),
+    bodyOfNews: noted.text('message.changed.text', common),
+    facts,
   };
-  const text = (): Written =>
-    compose((noted, lines) => ({
-      subject: null,
-      body: noted.text('message.evening.text', {
-        ...common,
-        lines,
-        ask: askOf(noted, night, times, common),
-      }),
-    }));
-  const mail = (): Written =>
-    compose((noted, lines) => ({
+}
+
+function evening(noted: NotedWording, planned: PlannedMessage, night: NightFor): Written {
+  const { plans, moments } = night;
+  const common = commonOf(noted, night);
+  const lines = plans.map((plan) => eveningLine(noted, plan)).join('\n');
+  const stops = plans.map(factOfStop);
+  const facts = ['evening', moments.firstArrivalAt, common.door, planned.asks, ...stops];
+  if (planned.channel === 'mail')
+    return {
       subject: noted.text('message.evening.subject', common),
-      body: noted.text('message.evening.mail', { ...common, lines, address: site.address }),
-    }));
-  const lastTextAt = Math.min(times.firstStopAt, quietFrom(addDays(on, -1), zone));
-  return byChannels(recipient, {
-    text: { ...at('evening', times.eveningAt, lastTextAt), write: text },
-    mail: { ...at('evening', times.eveningAt, times.firstStopAt), write: mail },
-    callReason: 'evening-text-failed',
-  });
+      body: noted.text('message.evening.mail', { ...common, lines }),
+      facts,
+    };
+  const says = (key: string, ask: string): string =>
+    noted.text(`message.evening.${key}`, {
+      ...common,
+      lines,
+      ask: noted.text(`message.evening.${ask}`, common),
+    });
+  const fitting = (key: string, shortKey: string): string => {
+    const full = says(key, askKeys[planned.asks]);
+    return isAffordable(full) ? full : says(shortKey, shortAskKeys[planned.asks]);
+  };
+  return {
+    subject: null,
+    body: fitting('text', 'short'),
+    bodyOfNews: fitting('news', 'news-short'),
+    facts,
+  };
 }
 
-function askOf(
-  noted: NotedWording,
-  night: NightFor,
-  times: NightTimes,
-  common: { readonly url: string; readonly phone: string },
-): string {
-  if (!night.hearsMorning) return noted.text('message.evening.ask-plan', common);
-  if (!getsMorningText(night, times)) return noted.text('message.evening.ask-web', common);
-  const [{ zone }] = night.plans;
-  const askTime = familyTime(times.questionAt, zone, noted.wording.profile).time;
-  return noted.text('message.evening.ask-text', { ...common, askTime });
+const askKeys = { nobody: 'ask-plan', web: 'ask-web', text: 'ask-text' } as const;
+const shortAskKeys = { nobody: 'ask-short', web: 'ask-web-short', text: 'ask-short' } as const;
+
+/** Two parts in the short alphabet, three in another: beyond that the page tells the rest. */
+function isAffordable(body: string): boolean {
+  const { encoding, segments } = messageSegments(inShortAlphabet(body));
+  return segments <= (encoding === 'gsm-7' ? 2 : 3);
 }
 
-const eveningLine = (noted: NotedWording, { plan, familyLabel, zone }: MorningPlan): string =>
-  plan.kind === 'standard'
-    ? noted.text('message.evening.line', {
-        label: familyLabel,
-        time: stopTimeSays(noted, plan.stopAt, zone),
-      })
-    : noted.text('message.evening.line-individual', { label: familyLabel });
+const eveningLine = (noted: NotedWording, morning: MorningPlan): string =>
+  stopLines(noted, morning, 'message.evening.line');
 
-/**
- * The reminder goes before the stop, when there is still time to eat. In the quiet hours only a baby's last feed is
- * worth waking somebody who agreed to it; an older child sleeps, and the evening text has told the time.
- */
-function reminders(night: NightFor, times: NightTimes): DraftMessage[] {
-  const { recipient, wording, plans } = night;
-  if (!recipient.mayText) return [];
-  const [{ zone, site }] = plans;
-  const due = plans.filter(({ plan }) => {
-    if (plan.kind !== 'standard' || plan.stopReminderAt <= times.eveningAt) return false;
-    const isAwake = !isQuiet(plan.stopReminderAt, zone, false);
-    const isLastFeed = plan.isInfant && !isQuiet(plan.stopReminderAt, zone, recipient.mayTextEarly);
-    return isAwake || isLastFeed;
-  });
-  const moments = new Map<Instant, MorningPlan[]>();
-  for (const morning of due) {
-    if (morning.plan.kind !== 'standard') continue;
-    const { stopReminderAt } = morning.plan;
-    moments.set(stopReminderAt, [...(moments.get(stopReminderAt) ?? []), morning]);
-  }
-  return [...moments].flatMap(([dueAt, those]) =>
-    byChannels(
-      { ...recipient, mayMail: false },
-      {
-        text: {
-          ...at('reminder', dueAt, Math.min(...those.map(stopOrWakeAt))),
-          write: () => {
-            const noted = noting(wording);
-            const lines = those.map((morning) => reminderLine(noted, morning)).join('\n');
-            const body = noted.text('message.reminder.text', {
-              clinic: site.shortName,
-              lines,
-              phone: shownPhone(site.phone, site.country),
-            });
-            return { subject: null, body, ...versionsOf(noted) };
-          },
-        },
-        // The evening text has told the time; a lost reminder wakes nobody.
-        callReason: null,
-      },
-    ),
-  );
+function reminder(noted: NotedWording, { about, dueAt }: PlannedMessage, night: NightFor): Written {
+  const those = night.plans.filter((_, place) => about.includes(place));
+  const { clinic, phone } = commonOf(noted, night);
+  const lines = those.map((plan) => reminderLine(noted, plan)).join('\n');
+  return {
+    subject: null,
+    body: noted.text('message.reminder.text', { clinic, lines, phone }),
+    facts: ['reminder', dueAt, ...those.map(factOfStop)],
+  };
 }
 
-function reminderLine(noted: NotedWording, { plan, familyLabel, zone }: MorningPlan): string {
+function reminderLine(noted: NotedWording, morning: MorningPlan): string {
+  const { plan, familyLabel, zone } = morning;
   if (plan.kind !== 'standard') throw new RangeError('A plan without hours has no reminder');
+  if (!plan.allSame) return stopLines(noted, morning, 'message.reminder.line');
   const { profile } = noted.wording;
   const time = stopTimeSays(noted, plan.stopAt, zone);
   if (plan.lastFeedAt === null)
@@ -191,88 +210,24 @@ function reminderLine(noted: NotedWording, { plan, familyLabel, zone }: MorningP
   return noted.text('message.reminder.line-feed', { label: familyLabel, fromTime, time });
 }
 
-function morning(night: NightFor, times: NightTimes): DraftMessage[] {
-  const { recipient, wording, plans, url } = night;
-  const [{ site }] = plans;
-  const compose = (keys: { subject: string | null; body: string }): Written => {
-    const noted = noting(wording);
-    const lines = plans.map((plan) => questionLine(noted, plan)).join('\n');
-    const params = {
-      clinic: site.shortName,
-      phone: shownPhone(site.phone, site.country),
-      url,
-      lines,
-      count: plans.length,
-    };
-    return {
-      subject: keys.subject && noted.text(keys.subject, params),
-      body: noted.text(keys.body, params),
-      ...versionsOf(noted),
-    };
+function morning(noted: NotedWording, { channel }: PlannedMessage, night: NightFor): Written {
+  const { plans } = night;
+  const lines = plans.map((plan) => questionLine(noted, plan)).join('\n');
+  const params = { ...commonOf(noted, night), lines, count: plans.length };
+  const facts = ['morning', ...plans.map(factOfStop)];
+  if (channel === 'sms')
+    return { subject: null, body: noted.text('message.morning.text', params), facts };
+  return {
+    subject: noted.text('message.morning.subject', params),
+    body: noted.text('message.morning.mail', params),
+    facts,
   };
-  const moment = at('morning', times.questionAt, times.firstArrivalAt);
-  return byChannels(
-    { ...recipient, mayText: getsMorningText(night, times) },
-    {
-      text: {
-        ...moment,
-        write: () => compose({ subject: null, body: 'message.morning.text' }),
-      },
-      mail: {
-        ...moment,
-        write: () => compose({ subject: 'message.morning.subject', body: 'message.morning.mail' }),
-      },
-      callReason: 'morning-text-failed',
-    },
-  );
 }
 
-const questionLine = (noted: NotedWording, { plan, familyLabel, zone }: MorningPlan): string =>
-  plan.kind === 'standard'
-    ? noted.text('message.morning.line', {
-        label: familyLabel,
-        time: stopTimeSays(noted, plan.stopAt, zone),
-      })
-    : noted.text('message.morning.line-individual', { label: familyLabel });
-
-interface Composed {
-  readonly subject: string | null;
-  readonly body: string;
+function nudge(noted: NotedWording, _planned: PlannedMessage, night: NightFor): Written {
+  const body = noted.text('message.nudge.text', commonOf(noted, night));
+  return { subject: null, body, facts: ['nudge'] };
 }
-type Written = Composed & Pick<DraftMessage, 'wordingVersions'>;
-type Moment = Pick<DraftMessage, 'kind' | 'dueAt' | 'lastUsefulAt'>;
 
-const at = (kind: DraftMessage['kind'], dueAt: Instant, lastUsefulAt: Instant): Moment => ({
-  kind,
-  dueAt,
-  lastUsefulAt,
-});
-
-const versionsOf = (noted: NotedWording): Pick<DraftMessage, 'wordingVersions'> => ({
-  wordingVersions: noted.wording.versions(noted.used()),
-});
-
-function byChannels(
-  recipient: Recipient,
-  ways: {
-    readonly text: Moment & { readonly write: () => Written };
-    readonly mail?: Moment & { readonly write: () => Written };
-    readonly callReason: string | null;
-  },
-): DraftMessage[] {
-  const { familyMemberId, language, phone, email } = recipient;
-  const drafts: DraftMessage[] = [];
-  const add = (
-    channel: DraftMessage['channel'],
-    address: string,
-    { write, ...moment }: Moment & { readonly write: () => Written },
-    callReason: string | null,
-  ): void => {
-    drafts.push({ ...moment, ...write(), channel, familyMemberId, address, language, callReason });
-  };
-  if (recipient.mayText && phone !== null) add('sms', phone, ways.text, ways.callReason);
-  // Where a text goes too, a lost e-mail needs no call.
-  if (recipient.mayMail && email !== null && ways.mail)
-    add('mail', email, ways.mail, recipient.mayText ? null : ways.callReason);
-  return drafts;
-}
+const questionLine = (noted: NotedWording, morning: MorningPlan): string =>
+  stopLines(noted, morning, 'message.morning.line');

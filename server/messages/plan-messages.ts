@@ -1,35 +1,38 @@
 import type { Transaction } from 'sequelize';
+import type { PlannedCall } from '../../shared/domain/message-plan';
+import { addDays } from '../../shared/domain/zone';
+import { isQuiet } from '../../shared/domain/quiet-hours';
 import { issueHouseholdLink } from '../auth/links';
 import { closeCalls, raiseCall } from '../calls/calls';
 import type { Context } from '../context';
-import { change, select } from '../database/connection';
-import { announce } from '../live/announce';
-import { enqueue } from '../outbox/enqueue';
+import { select } from '../database/connection';
+import { arePhrasesSigned } from '../individual-plans/plan-lines';
 import { morningPlansOf, type MorningPlan } from '../series/morning-plans';
 import { canSpeak, loadWording, type Wording } from '../wording/render';
-import { dedupeKeyOf, type DraftMessage } from './draft-message';
-import { linkExpiresAt, messagesFor, nightTimes, type NightFor } from './night-messages';
-import { isQuiet } from './quiet-hours';
-import { chosenFor, recipientsOf, type Recipient } from './recipients';
-
-export interface HouseholdDay {
-  readonly householdId: number;
-  /** The day of the mornings. */
-  readonly on: string;
-}
-
-type Plans = readonly [MorningPlan, ...MorningPlan[]];
-
-interface Told {
-  readonly night: NightFor;
-  readonly drafts: readonly DraftMessage[];
-}
+import { tellDisagreement, toldAnswers, type ToldAnswers } from './answers-differ';
+import {
+  drafted,
+  linkExpiresAt,
+  nightTimes,
+  planOfNight,
+  type NightFor,
+  type NightPlans,
+} from './night-messages';
+import {
+  queueOf,
+  syncQueue,
+  wantedOf,
+  type HouseholdDay,
+  type QueuedMessage,
+  type WantedMessage,
+} from './night-queue';
+import { recipientsOf, type Recipient } from './recipients';
 
 /**
- * Brings what waits in the outbox for a household's night and morning in line with the plan as it is now: evening text,
- * reminder, morning question. Queues what is new, takes back what no longer holds, leaves alone what has gone out with
- * the same content. Call it in every transaction that changes mornings, adults, consents or answers; doing so again
- * changes nothing. Whoever no message may reach is put on the call list.
+ * Brings what waits in the outbox for a household's day in line with the plan as it is now: the word some days ahead,
+ * evening text, reminder, morning question, nudge. Queues what is new, takes back what no longer holds, leaves alone
+ * what has gone out with the same content. Call it in every transaction that changes mornings, adults, consents or
+ * answers; doing so again changes nothing. Whoever no message may reach is put on the call list.
  */
 export async function planHouseholdMessages(
   context: Context,
@@ -42,77 +45,105 @@ export async function planHouseholdMessages(
     .filter(({ state, arrivalAt }) => state === 'planned' && arrivalAt > now)
     .sort((one, other) => other.bornOn.localeCompare(one.bornOn) || one.childId - other.childId);
   const [first, ...others] = plans;
-  const answers = await newestAnswers(context, transaction, plans);
+  const answers = await toldAnswers(context, transaction, plans);
+  await tellDisagreement(context, transaction, day, plans, answers);
   const comesNot = plans.every(({ morningId }) => isAbsence(answers.get(morningId)));
   if (!first || comesNot) {
     await syncQueue(context, transaction, day, []);
     return;
   }
-  await planNight(context, transaction, day, [first, ...others], answers.size === plans.length);
+  await planNight(context, transaction, day, [first, ...others], answers);
 }
+
+const isAbsence = (told: { readonly answer: string } | undefined): boolean =>
+  told?.answer === 'not-coming' || told?.answer === 'ill';
 
 async function planNight(
   context: Context,
   transaction: Transaction,
   day: HouseholdDay,
-  plans: Plans,
-  isAnswered: boolean,
+  plans: NightPlans,
+  answers: ToldAnswers,
 ): Promise<void> {
   const { db, clock } = context;
   const now = clock.now();
   const household = await recipientsOf(db, { householdId: day.householdId }, transaction);
-  const escorts = plans.map((plan) => plan.escortFamilyMemberId ?? plan.nightCarerFamilyMemberId);
-  const hearEvening = chosenFor(
-    plans.map((plan) => plan.nightCarerFamilyMemberId),
-    household,
-  );
-  const hearMorning = chosenFor(escorts, household);
+  // Running late answers nothing about the night.
+  const isAnswered = plans.every(({ morningId }) => answers.has(morningId));
+  const followsMorning = await hasMorningBefore(context, transaction, day, plans[0]);
+  const night = planOfNight(plans, household, { isAnswered, followsMorning });
   const call = callsOf(context, transaction, day, plans, isAnswered);
-  if (hearEvening.length === 0) await call.raise('nobody-to-message', null);
-  else await call.close('nobody-to-message', null);
-  if (plans.some(({ plan }) => plan.kind === 'individual'))
-    await call.raise('individual-plan', null);
-  const told: Told[] = [];
-  for (const recipient of new Set([...hearEvening, ...hearMorning])) {
-    if (recipient.readsHow === 'no') await call.raise('does-not-read', recipient);
+  await raisePlanned(call, night.calls, household, plans);
+  const queue = await queueOf(context, transaction, day);
+  const wanted: WantedMessage[] = [];
+  for (const recipient of new Set([...night.hearEvening, ...night.hearMorning])) {
+    const planned = night.messages.filter(
+      ({ familyMemberId }) => familyMemberId === recipient.familyMemberId,
+    );
     const wording = await signedWording(context, transaction, recipient);
     if (!wording) {
       await call.raise('language-not-signed', recipient);
       continue;
     }
+    if (hasUnsignedPhrases(plans, wording)) await call.raise('individual-plan', null);
     const url = await householdUrl(context, transaction, day, plans, recipient);
-    const hearsEvening = hearEvening.includes(recipient);
-    const hearsMorning = hearMorning.includes(recipient);
-    const night = { recipient, wording, url, plans, hearsEvening, hearsMorning, isAnswered };
-    const drafts = messagesFor(night);
+    const nightFor = { recipient, wording, url, plans, moments: night.moments };
+    const drafts = planned.map((message) => drafted(message, nightFor));
     const keys = drafts.flatMap((draft) => Object.keys(draft.wordingVersions));
     if (!wording.isSignedOff(keys)) {
       await call.raise('language-not-signed', recipient);
       continue;
     }
     await call.close('language-not-signed', recipient);
-    told.push({ night, drafts });
-  }
-  const queue = await queueOf(context, transaction, day);
-  const wanted: DraftMessage[] = [];
-  for (const { night, drafts } of told) {
-    const fit = drafts.filter((draft) => isStillOpen(draft, night, now));
+    const own = drafts.map((draft) => wantedOf(day, draft, queue));
+    const fit = own.filter((message) => isStillOpen(message, nightFor, queue, now));
     wanted.push(...fit);
-    const { familyMemberId } = night.recipient;
-    const heard = [...fit, ...queue.filter((message) => message.state !== 'withdrawn')].some(
-      (message) => message.kind === 'evening' && message.familyMemberId === familyMemberId,
-    );
-    if (night.hearsEvening && !heard) await call.raise('evening-too-late', night.recipient);
+    const hearsEvening = night.hearEvening.includes(recipient);
+    if (hearsEvening && !hearsOfNight(own, fit, queue))
+      await call.raise('evening-too-late', recipient);
   }
   await syncQueue(context, transaction, day, wanted);
 }
 
+/** Whether the evening's facts have reached this person, are on the way, or are a call already. */
+const hearsOfNight = (
+  own: readonly WantedMessage[],
+  fit: readonly WantedMessage[],
+  queue: readonly QueuedMessage[],
+): boolean =>
+  fit.some(({ kind }) => kind === 'evening') ||
+  own.some(
+    ({ kind, isTold, dedupeKey }) =>
+      kind === 'evening' &&
+      (isTold || queue.some(({ key, state }) => key === dedupeKey && state === 'queued')),
+  );
+
 /** Whether a message can still go out: it is useful, and a late one does not fall into the quiet hours. */
-function isStillOpen(draft: DraftMessage, { recipient, plans }: NightFor, now: number): boolean {
-  if (draft.lastUsefulAt <= now) return false;
-  if (draft.channel === 'mail' || draft.dueAt > now) return true;
-  return !isQuiet(now, plans[0].zone, recipient.mayTextEarly);
+function isStillOpen(
+  message: WantedMessage,
+  { recipient, plans }: NightFor,
+  queue: readonly QueuedMessage[],
+  now: number,
+): boolean {
+  if (message.isTold) return true;
+  if (message.lastUsefulAt <= now) return false;
+  if (message.dueAt > now) return true;
+  // Who is planned in less than these days hears from the invitation; a change of what was told ahead goes at once.
+  const isExpected = queue.some(
+    ({ kind, familyMemberId, channel }) =>
+      kind === message.kind &&
+      familyMemberId === message.familyMemberId &&
+      channel === message.channel,
+  );
+  if (message.kind === 'ahead' && !isExpected) return false;
+  return message.channel === 'mail' || !isQuiet(now, plans[0].zone, recipient.mayTextEarly);
 }
+
+/** What a clinician composed for one child and nobody has signed in this language, a person tells. */
+const hasUnsignedPhrases = (plans: NightPlans, wording: Wording): boolean =>
+  plans.some(
+    ({ individualPlan }) => individualPlan && !arePhrasesSigned(individualPlan.body, wording),
+  );
 
 /** Null when this person cannot be told anything in the language: no times, or no words. */
 async function signedWording(
@@ -129,7 +160,7 @@ async function householdUrl(
   { db, settings }: Context,
   transaction: Transaction,
   { householdId, on }: HouseholdDay,
-  plans: Plans,
+  plans: NightPlans,
   { familyMemberId }: Recipient,
 ): Promise<string> {
   const expiresAt = linkExpiresAt(nightTimes(plans));
@@ -137,42 +168,58 @@ async function householdUrl(
   return (await issueHouseholdLink(db, transaction, settings, link)).url;
 }
 
-const isAbsence = (answer: string | undefined): boolean =>
-  answer === 'not-coming' || answer === 'ill';
-
-/** What was told last about each of these mornings. */
-async function newestAnswers(
+/** Whether the household comes in the days before as well: it has been told of the run by then. */
+async function hasMorningBefore(
   { db }: Context,
   transaction: Transaction,
-  plans: readonly MorningPlan[],
-): Promise<Map<number, string>> {
-  if (plans.length === 0) return new Map();
-  const rows = await select<{ morning_id: number; answer: string }>(
+  { householdId, on }: HouseholdDay,
+  { site }: MorningPlan,
+): Promise<boolean> {
+  const rows = await select(
     db,
-    'SELECT morning_id, answer FROM fasting_checks WHERE morning_id IN (:morningIds) ORDER BY received_at, id',
-    { morningIds: plans.map((plan) => plan.morningId) },
+    `SELECT morning.id FROM mornings morning JOIN children child ON child.id = morning.child_id
+     WHERE child.household_id = :householdId AND morning.state <> 'lost'
+       AND morning.planned_on >= :from AND morning.planned_on < :on LIMIT 1`,
+    { householdId, on, from: addDays(on, -site.aheadTextDays) },
     transaction,
   );
-  return new Map(rows.map((row) => [row.morning_id, row.answer]));
+  return rows.length > 0;
 }
 
 interface Calls {
-  raise(reason: string, recipient: Recipient | null): Promise<void>;
+  raise(reason: string, recipient: Recipient | null, urgentAt?: number): Promise<void>;
   close(reason: string, recipient: Recipient | null): Promise<void>;
+}
+
+async function raisePlanned(
+  call: Calls,
+  planned: readonly PlannedCall[],
+  household: readonly Recipient[],
+  plans: NightPlans,
+): Promise<void> {
+  if (!planned.some(({ reason }) => reason === 'nobody-to-message'))
+    await call.close('nobody-to-message', null);
+  for (const { reason, familyMemberId, urgentAt } of planned) {
+    const recipient = household.find((one) => one.familyMemberId === familyMemberId) ?? null;
+    await call.raise(reason, recipient, urgentAt);
+  }
+  if (plans.some(({ plan }) => plan.kind === 'individual'))
+    await call.raise('individual-plan', null);
+  else await call.close('individual-plan', null);
 }
 
 function callsOf(
   { db, clock }: Context,
   transaction: Transaction,
   { householdId, on }: HouseholdDay,
-  plans: Plans,
+  plans: NightPlans,
   isAnswered: boolean,
 ): Calls {
   const now = clock.now();
   const keyOf = (reason: string, recipient: Recipient | null): string =>
     `${reason}:${householdId}:${on}${recipient ? `:${recipient.familyMemberId}` : ''}`;
   return {
-    raise: async (reason, recipient) => {
+    raise: async (reason, recipient, urgentAt = nightTimes(plans).eveningAt) => {
       // A family that has answered for all its children has been reached.
       if (isAnswered) return;
       // Made once for a night; after it was done, planning again does not ask for it again.
@@ -196,7 +243,7 @@ function callsOf(
         morningId: plans[0].morningId,
         familyMemberId: recipient?.familyMemberId ?? null,
         isForClinician: reason === 'individual-plan',
-        urgentAt: Math.max(now, nightTimes(plans).eveningAt),
+        urgentAt: Math.max(now, urgentAt),
         now,
       });
     },
@@ -204,82 +251,4 @@ function callsOf(
       await closeCalls(db, transaction, [keyOf(reason, recipient)], { now });
     },
   };
-}
-
-interface QueuedMessage {
-  readonly key: string;
-  readonly kind: string;
-  readonly familyMemberId: number | null;
-  readonly state: string;
-  readonly lastUsefulAt: Date;
-}
-
-const nightKinds: readonly DraftMessage['kind'][] = ['evening', 'reminder', 'morning'];
-
-async function queueOf(
-  { db }: Context,
-  transaction: Transaction,
-  { householdId, on }: HouseholdDay,
-): Promise<QueuedMessage[]> {
-  return select<QueuedMessage>(
-    db,
-    `SELECT dedupe_key AS \`key\`, kind, family_member_id AS familyMemberId, state,
-       last_useful_at AS lastUsefulAt FROM messages
-     WHERE household_id = :householdId AND morning_on = :on AND kind IN (:nightKinds)`,
-    { householdId, on, nightKinds },
-    transaction,
-  );
-}
-
-async function syncQueue(
-  context: Context,
-  transaction: Transaction,
-  day: HouseholdDay,
-  wanted: readonly DraftMessage[],
-): Promise<void> {
-  const { db, clock } = context;
-  const { householdId, on } = day;
-  const now = clock.now();
-  const byKey = new Map(wanted.map((draft) => [dedupeKeyOf(householdId, on, draft), draft]));
-  const queue = await queueOf(context, transaction, day);
-  // What waits past its time while the night goes on never arrived: the sender gives it up aloud.
-  const isForSender = ({ lastUsefulAt }: QueuedMessage): boolean =>
-    wanted.length > 0 && lastUsefulAt.getTime() <= now;
-  const superseded = queue
-    .filter((message) => message.state === 'queued' && !byKey.has(message.key))
-    .filter((message) => !isForSender(message))
-    .map(({ key }) => key);
-  let changed = await setState(context, transaction, superseded, 'queued', 'withdrawn');
-  // A plan that went back to what it was: its message was taken back before and is wanted again.
-  const again = queue
-    .filter(({ key, state }) => state === 'withdrawn' && byKey.has(key))
-    .map(({ key }) => key);
-  changed += await setState(context, transaction, again, 'withdrawn', 'queued');
-  for (const [dedupeKey, draft] of byKey) {
-    const isNew = await enqueue(db, transaction, {
-      ...draft,
-      dedupeKey,
-      householdId,
-      morningOn: on,
-      createdAt: now,
-    });
-    if (isNew) changed += 1;
-  }
-  if (changed > 0) await announce(db, transaction, 'messages');
-}
-
-async function setState(
-  { db }: Context,
-  transaction: Transaction,
-  dedupeKeys: readonly string[],
-  from: 'queued' | 'withdrawn',
-  to: 'queued' | 'withdrawn',
-): Promise<number> {
-  if (dedupeKeys.length === 0) return 0;
-  return change(
-    db,
-    'UPDATE messages SET state = :to WHERE dedupe_key IN (:dedupeKeys) AND state = :from',
-    { dedupeKeys, from, to },
-    transaction,
-  );
 }

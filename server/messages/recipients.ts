@@ -1,22 +1,18 @@
 import type { Sequelize, Transaction } from 'sequelize';
+import type { PlannedRecipient } from '../../shared/domain/message-plan';
 import { select } from '../database/connection';
 
 /** An adult of a household and the ways by which this person agreed to be written to. */
-export interface Recipient {
-  readonly familyMemberId: number;
+export interface Recipient extends PlannedRecipient {
   readonly householdId: number;
   readonly fullName: string;
-  readonly phone: string | null;
-  readonly email: string | null;
   readonly language: string;
-  readonly readsHow: 'well' | 'little' | 'no';
-  readonly isGuardian: boolean;
   readonly seesResults: boolean;
-  /** Agreed to texts and has not opted out. */
-  readonly mayText: boolean;
-  /** Agreed to texts before 8 in the morning as well. */
-  readonly mayTextEarly: boolean;
-  readonly mayMail: boolean;
+  /** Agreed to hear of letters this way; else somebody tells of them. */
+  readonly mayTextLetters: boolean;
+  readonly mayMailLetters: boolean;
+  /** Texts go without a recorded consent, within the limits for care texts (47 CFR 64.1200(a)(9)(iv)). */
+  readonly isWithoutConsent: boolean;
 }
 
 interface RecipientRow {
@@ -29,18 +25,29 @@ interface RecipientRow {
   reads_how: Recipient['readsHow'];
   is_guardian: 0 | 1;
   sees_results: 0 | 1;
-  may_text: 0 | 1;
-  may_text_early: 0 | 1;
-  may_mail: 0 | 1;
+  agrees_sms: 0 | 1;
+  agrees_early: 0 | 1;
+  agrees_sms_letters: 0 | 1;
+  agrees_mail: 0 | 1;
+  agrees_mail_letters: 0 | 1;
+  needs_no_consent: 0 | 1;
+  opted_out_sms: 0 | 1;
+  opted_out_mail: 0 | 1;
 }
 
-const consentTo = (channel: 'sms' | 'mail', more = ''): string =>
+/** A consent belongs to the number it was given for: another number is asked again. */
+const consentTo = (channel: 'sms' | 'mail', address: 'phone' | 'email', more = ''): string =>
   `EXISTS (SELECT 1 FROM contact_consents consent WHERE consent.family_member_id = member.id
-     AND consent.channel = '${channel}' AND consent.withdrawn_at IS NULL ${more})`;
-// An opt-out belongs to the number: it holds for everybody who shares it and for every child.
-const optedOut = (channel: 'sms' | 'mail', address: string): string =>
+     AND consent.channel = '${channel}' AND consent.withdrawn_at IS NULL
+     AND (consent.address IS NULL OR consent.address = member.${address}) ${more})`;
+// An opt-out belongs to the number too: it holds for everybody who shares it and for every child.
+const optedOut = (channel: 'sms' | 'mail', address: 'phone' | 'email'): string =>
   `EXISTS (SELECT 1 FROM opt_outs WHERE opt_outs.channel = '${channel}' AND opt_outs.address = member.${address}
      AND opt_outs.ended_at IS NULL)`;
+/** A number that the family gave, where the site uses the exemption and nobody said no. */
+const needsNoConsent = `(site.texts_without_consent AND NOT EXISTS (
+  SELECT 1 FROM contact_consent_events event WHERE event.family_member_id = member.id
+    AND event.channel = 'sms' AND event.event = 'withdrawn' AND event.purpose = 'visits'))`;
 
 /** The adults of a household, guardians first, or only those named. */
 export async function recipientsOf(
@@ -54,17 +61,29 @@ export async function recipientsOf(
     `SELECT member.id, member.household_id, member.full_name, member.phone, member.email, member.reads_language,
        member.reads_how,
        MAX(tie.standing = 'guardian') AS is_guardian, MAX(tie.sees_results) AS sees_results,
-       (member.phone IS NOT NULL AND ${consentTo('sms')} AND NOT ${optedOut('sms', 'phone')}) AS may_text,
-       (member.phone IS NOT NULL AND ${consentTo('sms', 'AND consent.covers_early_morning')}
-         AND NOT ${optedOut('sms', 'phone')}) AS may_text_early,
-       (member.email IS NOT NULL AND ${consentTo('mail')} AND NOT ${optedOut('mail', 'email')}) AS may_mail
+       ${consentTo('sms', 'phone')} AS agrees_sms,
+       ${consentTo('sms', 'phone', 'AND consent.covers_early_morning')} AS agrees_early,
+       ${consentTo('sms', 'phone', 'AND consent.covers_letters')} AS agrees_sms_letters,
+       ${consentTo('mail', 'email')} AS agrees_mail,
+       ${consentTo('mail', 'email', 'AND consent.covers_letters')} AS agrees_mail_letters,
+       ${needsNoConsent} AS needs_no_consent,
+       ${optedOut('sms', 'phone')} AS opted_out_sms, ${optedOut('mail', 'email')} AS opted_out_mail
      FROM family_members member JOIN child_family_members tie ON tie.family_member_id = member.id
+     JOIN households ON households.id = member.household_id JOIN sites site ON site.id = households.site_id
      WHERE ${'householdId' in wanted ? 'member.household_id = :householdId' : 'member.id IN (:familyMemberIds)'}
      GROUP BY member.id ORDER BY is_guardian DESC, member.id`,
     { ...wanted },
     transaction,
   );
-  return rows.map((row) => ({
+  return rows.map(recipientFrom);
+}
+
+function recipientFrom(row: RecipientRow): Recipient {
+  const canText = row.phone !== null && row.opted_out_sms === 0;
+  const canMail = row.email !== null && row.opted_out_mail === 0;
+  const agreesToTexts = row.agrees_sms === 1;
+  const isWithoutConsent = canText && !agreesToTexts && row.needs_no_consent === 1;
+  return {
     familyMemberId: row.id,
     householdId: row.household_id,
     fullName: row.full_name,
@@ -74,28 +93,11 @@ export async function recipientsOf(
     readsHow: row.reads_how,
     isGuardian: Number(row.is_guardian) === 1,
     seesResults: Number(row.sees_results) === 1,
-    mayText: row.may_text === 1,
-    mayTextEarly: row.may_text_early === 1,
-    mayMail: row.may_mail === 1,
-  }));
-}
-
-const canBeReached = ({ mayText, mayMail }: Recipient): boolean => mayText || mayMail;
-
-/**
- * Who hears about a night or a morning: the people named for it, and where nobody is named or can be written to, the
- * first adult who can be, texts before e-mail and guardians before helpers. One person a moment, unless several are named.
- */
-export function chosenFor(
-  named: readonly (number | null)[],
-  household: readonly Recipient[],
-): Recipient[] {
-  const those = household.filter(
-    (recipient) => named.includes(recipient.familyMemberId) && canBeReached(recipient),
-  );
-  if (those.length > 0) return those;
-  const first =
-    household.find((recipient) => recipient.mayText) ??
-    household.find((recipient) => recipient.mayMail);
-  return first ? [first] : [];
+    mayText: canText && (agreesToTexts || isWithoutConsent),
+    mayTextEarly: canText && row.agrees_early === 1,
+    mayTextLetters: canText && row.agrees_sms_letters === 1,
+    mayMail: canMail && row.agrees_mail === 1,
+    mayMailLetters: canMail && row.agrees_mail_letters === 1,
+    isWithoutConsent,
+  };
 }

@@ -2,9 +2,10 @@ import { QueryTypes, type Transaction } from 'sequelize';
 import { parseReply, type Reply } from '../../shared/domain/reply';
 import { raiseCall } from '../calls/calls';
 import type { Context } from '../context';
-import { inTransaction } from '../database/connection';
+import { inTransaction, select } from '../database/connection';
 import { announce } from '../live/announce';
 import type { IncomingText, ReplyOutcome } from './incoming-text';
+import { answerByChoice } from './reply-choice';
 import { answerByDigit } from './reply-digit';
 import { optIn, optOut } from './reply-opt';
 import { senderOf, type ReplySender } from './reply-sender';
@@ -24,14 +25,27 @@ export async function takeReply(context: Context, text: IncomingText): Promise<R
     if (!(await noteReply(context, transaction, text, reply, sender))) return 'repeat';
     await announce(db, transaction, 'messages');
     if (reply.kind === 'opt-out') return optOut(context, transaction, text, sender);
-    if (reply.kind === 'opt-in') return optIn(context, transaction, text, sender);
+    if (reply.kind === 'opt-in' && (await mayOptIn(context, transaction, text)))
+      return optIn(context, transaction, text, sender);
     if (!sender) return unknownNumber(context, transaction, text);
     if (reply.kind === 'help') {
       await sendAnswer(context, transaction, { text, sender, key: 'message.help' });
       return 'help';
     }
-    if (reply.kind === 'digit')
-      return answerByDigit(context, transaction, { text, sender, digit: reply.digit });
+    if (reply.kind === 'digit') {
+      const { digit, words = null } = reply;
+      if (words !== null || (text.pictures ?? 0) > 0)
+        await tellPerson(context, transaction, text, sender);
+      return answerByDigit(context, transaction, { text, sender, digit });
+    }
+    if (reply.kind === 'choice') {
+      const outcome = await answerByChoice(context, transaction, {
+        text,
+        sender,
+        choice: reply.choice,
+      });
+      if (outcome) return outcome;
+    }
     return unclear(context, transaction, text, sender);
   });
 }
@@ -55,7 +69,7 @@ async function noteReply(
         body: body.slice(0, longestBody),
         householdId: sender?.recipient.householdId ?? null,
         familyMemberId: sender?.recipient.familyMemberId ?? null,
-        understoodAs: reply.kind === 'digit' ? `digit-${reply.digit}` : reply.kind,
+        understoodAs: understood(reply),
         receivedAt: new Date(receivedAt),
       },
       transaction,
@@ -63,6 +77,11 @@ async function noteReply(
     },
   );
   return touched === 1;
+}
+
+function understood(reply: Reply): string {
+  if (reply.kind === 'digit') return `digit-${reply.digit}`;
+  return reply.kind === 'choice' ? `choice-${reply.choice}` : reply.kind;
 }
 
 async function unknownNumber(
@@ -88,23 +107,48 @@ async function unclear(
   text: IncomingText,
   sender: ReplySender,
 ): Promise<ReplyOutcome> {
-  const { recipient, plans } = sender;
-  await raiseCall(context.db, transaction, {
-    reason: 'text-unclear',
-    openKey: `text-unclear:${recipient.familyMemberId}`,
-    householdId: recipient.householdId,
-    childId: plans[0]?.childId ?? null,
-    morningId: plans[0]?.morningId ?? null,
-    familyMemberId: recipient.familyMemberId,
-    detail: text.body,
-    isForClinician: false,
-    urgentAt: text.receivedAt,
-    now: text.receivedAt,
-  });
-  const isAsked = plans.some(
+  await tellPerson(context, transaction, text, sender);
+  const isAsked = sender.plans.some(
     ({ state, arrivalAt }) => state === 'planned' && arrivalAt > text.receivedAt,
   );
   const key = isAsked ? 'message.unclear-morning' : 'message.unclear';
   await sendAnswer(context, transaction, { text, sender, key });
   return 'unclear';
+}
+
+/** What no machine reads: a person sees the words, and hears of pictures, which are not kept. */
+async function tellPerson(
+  { db }: Context,
+  transaction: Transaction,
+  { body, pictures = 0, receivedAt }: IncomingText,
+  { recipient, plans }: ReplySender,
+): Promise<void> {
+  await raiseCall(db, transaction, {
+    reason: pictures > 0 ? 'text-picture' : 'text-unclear',
+    openKey: `text-unclear:${recipient.familyMemberId}`,
+    householdId: recipient.householdId,
+    childId: plans[0]?.childId ?? null,
+    morningId: plans[0]?.morningId ?? null,
+    familyMemberId: recipient.familyMemberId,
+    detail: body,
+    isForClinician: false,
+    urgentAt: receivedAt,
+    now: receivedAt,
+  });
+}
+
+/** "Yes" is a word that people also answer with; it switches texts on only where they are off. */
+async function mayOptIn(
+  { db }: Context,
+  transaction: Transaction,
+  { from, body }: IncomingText,
+): Promise<boolean> {
+  if (!/yes/i.test(body)) return true;
+  const rows = await select(
+    db,
+    `SELECT id FROM opt_outs WHERE channel = 'sms' AND address = :from AND ended_at IS NULL`,
+    { from },
+    transaction,
+  );
+  return rows.length > 0;
 }

@@ -14,6 +14,7 @@ import { Problem } from '../http/problem';
 import { canSpeak, type WordingParams } from '../wording/render';
 import { linkExpiresAt, nightTimes } from './night-messages';
 import type { IncomingText, ReplyOutcome } from './incoming-text';
+import { askWhichChild, choiceLines } from './which-child';
 import type { ReplySender } from './reply-sender';
 import { sendAnswer } from './send-answer';
 
@@ -73,6 +74,8 @@ export async function answerByDigit(
           lastIntakeAt: null,
         })),
     });
+    if (digit === 2 && (await asksWhich(context, transaction, reply, night, told)))
+      return 'answered';
     await thank(context, transaction, reply, night, told);
     return 'answered';
   } catch (error) {
@@ -83,7 +86,7 @@ export async function answerByDigit(
   }
 }
 
-const actorOf = ({ recipient }: ReplySender): Actor => ({
+export const actorOf = ({ recipient }: ReplySender): Actor => ({
   side: 'family',
   id: recipient.familyMemberId,
   name: recipient.fullName,
@@ -110,6 +113,11 @@ async function wordsOfNight(
   return { url, weekday: arrival.weekday, date: arrival.date, time: arrival.time, door: site.door };
 }
 
+/** No family is told to go on without food for a child whose own plan nobody has composed. */
+const withoutHours = (night: HouseholdNight): boolean =>
+  night.children.some(({ plan }) => plan.kind === 'individual');
+const ownPlanKinds: readonly OutcomeKind[] = ['come-nurse-decides', 'stay-we-call'];
+
 const todoKeys: Readonly<Partial<Record<OutcomeKind, string>>> = {
   come: 'message.reply.come',
   'come-and-wait': 'message.reply.come-and-wait',
@@ -119,33 +127,66 @@ const todoKeys: Readonly<Partial<Record<OutcomeKind, string>>> = {
   'feed-now-and-call': 'message.reply.feed-now-and-call',
 };
 
-async function thank(
+function todoKeyOf(kind: OutcomeKind, night: HouseholdNight): string {
+  const key = todoKeys[kind] ?? 'message.reply.call-us';
+  return withoutHours(night) && ownPlanKinds.includes(kind) ? `${key}-own-plan` : key;
+}
+
+/** With several children a 2 is asked back once: who was it? Until then all of them count as fed. */
+async function asksWhich(
   context: Context,
   transaction: Transaction,
-  { text, sender, digit }: DigitReply,
+  reply: DigitReply,
+  night: HouseholdNight,
+  told: FastingCheckTold,
+): Promise<boolean> {
+  const { text, sender } = reply;
+  const labels = await askWhichChild(context, transaction, { text, sender }, night);
+  if (labels === null) return false;
+  await sendAnswer(context, transaction, {
+    text,
+    sender,
+    key: 'message.which-child.text',
+    ...(await todoOf(context, transaction, sender, night, told)),
+    lines: (noted) => choiceLines(noted, labels),
+  });
+  return true;
+}
+
+/** What this household does now, as the answer to a text tells it. */
+export async function todoOf(
+  context: Context,
+  transaction: Transaction,
+  sender: ReplySender,
   night: HouseholdNight,
   { kind, weCallBy }: FastingCheckTold,
-): Promise<void> {
+): Promise<{ readonly todoKey: string; readonly params: WordingParams }> {
   const params = await wordsOfNight(context, transaction, sender, night);
-  if (digit === 1 && kind === 'come') {
-    await sendAnswer(context, transaction, { text, sender, key: 'message.reply-thanks-1', params });
-    return;
-  }
   const { language } = sender.recipient;
   const callBy =
     weCallBy === null || !isLanguageId(language)
       ? {}
       : { weCallBy: familyTime(weCallBy, night.zone, profileOf(language)).time };
   const feedsAndWaits = kind === 'feed-now-and-call' && weCallBy !== null;
-  await sendAnswer(context, transaction, {
-    text,
-    sender,
-    key: digit === 2 ? 'message.reply-thanks-2' : 'message.reply-thanks',
-    todoKey: feedsAndWaits
-      ? 'message.reply.feed-now-we-call'
-      : (todoKeys[kind] ?? 'message.reply.call-us'),
-    params: { ...params, ...callBy },
-  });
+  const todoKey = feedsAndWaits ? 'message.reply.feed-now-we-call' : todoKeyOf(kind, night);
+  return { todoKey, params: { ...params, ...callBy } };
+}
+
+async function thank(
+  context: Context,
+  transaction: Transaction,
+  { text, sender, digit }: DigitReply,
+  night: HouseholdNight,
+  told: FastingCheckTold,
+): Promise<void> {
+  const more = await todoOf(context, transaction, sender, night, told);
+  if (digit === 1 && told.kind === 'come') {
+    const { params } = more;
+    await sendAnswer(context, transaction, { text, sender, key: 'message.reply-thanks-1', params });
+    return;
+  }
+  const key = digit === 2 ? 'message.reply-thanks-2' : 'message.reply-thanks';
+  await sendAnswer(context, transaction, { text, sender, key, ...more });
 }
 
 /** Before the question opens a 1 says nothing about the night; a 2 is news for the nurse, a person reads it. */

@@ -7,6 +7,7 @@ import type { IncomingText, ReplyOutcome } from './incoming-text';
 import type { ReplySender } from './reply-sender';
 import { recipientsOf } from './recipients';
 import { sendAnswer } from './send-answer';
+import { withdrawWaitingFor } from './withdraw-waiting';
 
 /** A morning this near needs a person's call at once when its messages may not go any more. */
 const nearMs = 48 * 3_600_000;
@@ -32,12 +33,12 @@ export async function optOut(
       `INSERT INTO opt_outs (channel, address, said, since_at) VALUES ('sms', :from, :said, :since)`,
       { replacements: { from, said: body.slice(0, 200), since }, transaction },
     );
-  await change(
-    db,
-    `UPDATE messages SET state = 'withdrawn' WHERE channel = 'sms' AND address = :from AND state = 'queued'`,
-    { from },
-    transaction,
-  );
+  await withdrawWaitingFor(context, transaction, {
+    channel: 'sms',
+    address: from,
+    familyMemberId: null,
+    what: 'everything',
+  });
   if (!sender) return 'opted-out';
   // One confirmation, which says nothing else (47 CFR 64.1200(a)(12)).
   if (!open)

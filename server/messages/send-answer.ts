@@ -1,8 +1,9 @@
 import type { Transaction } from 'sequelize';
+import { inShortAlphabet } from '../../shared/domain/message-segments';
 import type { Context } from '../context';
 import { enqueue } from '../outbox/enqueue';
 import { canSpeak, loadWording, type WordingParams } from '../wording/render';
-import { noting } from './draft-message';
+import { noting, type NotedWording } from './draft-message';
 import type { IncomingText } from './incoming-text';
 import type { ReplySender } from './reply-sender';
 import { siteOfHousehold, siteParams } from './tell-member';
@@ -15,6 +16,8 @@ export interface AnswerToText {
   readonly sender: ReplySender;
   readonly key: string;
   readonly params?: WordingParams;
+  /** Lines of the answer, written from wording of their own. */
+  readonly lines?: (noted: NotedWording) => string;
   /** Rendered first and handed to the answer as `todo`. */
   readonly todoKey?: string;
   /** 'opt-out-confirmation' may go to a number that has just opted out; nothing else may. */
@@ -28,7 +31,7 @@ export interface AnswerToText {
 export async function sendAnswer(
   context: Context,
   transaction: Transaction,
-  { text, sender, key, params = {}, todoKey, kind = 'reply' }: AnswerToText,
+  { text, sender, key, params = {}, lines, todoKey, kind = 'reply' }: AnswerToText,
 ): Promise<void> {
   const { db } = context;
   const { recipient } = sender;
@@ -39,7 +42,9 @@ export async function sendAnswer(
   const site = await siteOfHousehold(context, recipient.householdId, transaction);
   const all = { ...siteParams(site), ...params };
   const todo = todoKey === undefined ? {} : { todo: noted.text(todoKey, all) };
-  const body = noted.text(key, { ...all, ...todo });
+  const body = inShortAlphabet(
+    noted.text(key, { ...all, ...todo, ...(lines && { lines: lines(noted) }) }),
+  );
   if (!noted.wording.isSignedOff(noted.used())) return;
   await enqueue(db, transaction, {
     dedupeKey: `${kind}:${text.providerId}`,

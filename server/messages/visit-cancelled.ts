@@ -1,4 +1,5 @@
 import type { Transaction } from 'sequelize';
+import { chosenFor } from '../../shared/domain/message-plan';
 import { familyDay } from '../../shared/languages/family-time';
 import type { Context } from '../context';
 import { morningPlansOf } from '../series/morning-plans';
@@ -7,10 +8,12 @@ import { profileOf } from '../../shared/languages/profiles';
 import { isLanguageId } from '../../shared/languages/languages';
 import { sendCalendarEntries } from './calendar-entries';
 import { planHouseholdMessages } from './plan-messages';
-import { chosenFor, recipientsOf } from './recipients';
+import { recipientsOf } from './recipients';
 import { tellMember } from './tell-member';
 
 const usefulForMs = 12 * 3_600_000;
+/** The family is up, or about to be: this does not wait for the end of the quiet hours. */
+const urgentBeforeMs = 12 * 3_600_000;
 
 /**
  * Tells the families of lost mornings that there is no visit that day: a text, the cancelled calendar entry, and the
@@ -22,14 +25,15 @@ export async function tellVisitCancelled(
   transaction: Transaction,
   morningIds: readonly number[],
 ): Promise<void> {
-  const { db } = context;
+  const { db, clock } = context;
   const lost = await morningPlansOf(db, { morningIds }, transaction);
   await sendCalendarEntries(context, transaction, morningIds, 'CANCEL');
   const days = new Map(lost.map((plan) => [`${plan.householdId}:${plan.on}`, plan]));
-  for (const { householdId, on, childId } of days.values()) {
+  for (const { householdId, on, childId, arrivalAt } of days.values()) {
     await planHouseholdMessages(context, transaction, { householdId, on });
     const sameDay = await morningPlansOf(db, { householdId, on }, transaction);
     if (sameDay.some(({ state }) => state !== 'lost')) continue;
+    const lastLost = Math.max(...sameDay.map(({ morningId }) => morningId));
     const household = await recipientsOf(db, { householdId }, transaction);
     const named = lost.flatMap((plan) => [
       plan.escortFamilyMemberId,
@@ -50,11 +54,15 @@ export async function tellVisitCancelled(
           kind: 'visit-cancelled',
           prefix: 'message.visit-cancelled',
           params: { weekday: words?.weekday ?? '', date: words?.date ?? '' },
-          dedupe: `visit-cancelled:${householdId}:${on}`,
+          // A day that was planned anew and lost again is told again.
+          dedupe: `visit-cancelled:${householdId}:${on}:${lastLost}`,
           callReason: 'visit-cancelled-failed',
+          personFirst: 'visit-cancelled',
+          isUrgent: arrivalAt - clock.now() < urgentBeforeMs,
           childId,
           morningOn: on,
           usefulForMs,
+          ...(arrivalAt > clock.now() && { lastUsefulAt: arrivalAt }),
         },
       );
     }

@@ -5,7 +5,7 @@ import type {
   Order as OrderAnswer,
   OrderList,
 } from '../../shared/contracts/orders';
-import { dayOf } from '../../shared/domain/zone';
+import { addDays, dayOf } from '../../shared/domain/zone';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import { childInReach } from '../children/reach';
@@ -15,7 +15,8 @@ import { addOnce } from '../http/add-once';
 import { changedMeanwhile, invalid, notFound, Problem, type FieldError } from '../http/problem';
 import { announce } from '../live/announce';
 import { reportingDueOn, reportingRuleOf } from '../sites/rule-packs';
-import { closuresOf, siteOf } from '../sites/sites';
+import { closedDays } from '../sites/closed-days';
+import { siteOf } from '../sites/sites';
 import { orderAnswers } from './order-answer';
 import { Order } from './order-model';
 
@@ -130,6 +131,9 @@ export async function readOrder(
   return order;
 }
 
+/** No report waits longer, however many days in a row are closed. */
+const reportingLooksAheadDays = 60;
+
 /** A clinician signs; suspicion starts the clock of the report where the law says so. A repeat changes nothing. */
 export async function signOrder(
   context: Context,
@@ -148,13 +152,15 @@ export async function signOrder(
     const site = await siteOf(db, child.siteId, transaction);
     const today = dayOf(now, site.zone);
     const rule = reportingRuleOf(site);
-    const closures = await closuresOf(db, site.id, today, transaction);
-    const closedDays = new Set(closures.map(({ on }) => on));
+    const until = addDays(today, reportingLooksAheadDays);
+    const closed = await closedDays(db, site.id, today, until, transaction);
     const [touched] = await Order.update(
       {
         signedByStaffId: staff.id,
         signedAt: new Date(now),
-        reportingDueOn: rule ? reportingDueOn(rule, today, closedDays) : null,
+        reportingDueOn: rule
+          ? reportingDueOn(rule, today, new Set(closed.map(({ on }) => on)))
+          : null,
         version: order.version + 1,
       },
       { where: { id: orderId, version: order.version, signedAt: null }, transaction },

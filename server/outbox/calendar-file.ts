@@ -60,6 +60,19 @@ export function calendarDownload(download: {
   });
 }
 
+/** A calendar without entries, which the library cannot write: a feed with no morning to come. */
+export const emptyCalendar = (): string =>
+  [
+    'BEGIN:VCALENDAR',
+    'VERSION:2.0',
+    'CALSCALE:GREGORIAN',
+    `PRODID:${productId}`,
+    'METHOD:PUBLISH',
+    'END:VCALENDAR',
+  ]
+    .map((line) => `${line}\r\n`)
+    .join('');
+
 type Frame = Pick<CalendarFile, 'method' | 'organizer' | 'attendee' | 'stampAt'>;
 
 function written(entries: readonly CalendarEntry[], frame: Frame): string {

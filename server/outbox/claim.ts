@@ -1,6 +1,8 @@
 import type { Sequelize, Transaction } from 'sequelize';
 import { change, inTransaction, select } from '../database/connection';
 import type { ClaimedMessage } from './claimed-message';
+import { exceedsCareLimit } from './care-limit';
+import { hasArrivedSql } from './delivery-reports';
 import { giveUpOn, type GiveUp } from './give-up';
 
 export interface Claim {
@@ -15,7 +17,8 @@ export interface Claim {
 
 const columns = `id, kind, channel, household_id AS householdId, family_member_id AS familyMemberId,
   staff_id AS staffId, address, subject, body, calendar, calendar_method AS calendarMethod, call_reason AS callReason,
-  morning_on AS morningOn, due_at AS dueAt, last_useful_at AS lastUsefulAt, created_at AS createdAt, attempts`;
+  morning_on AS morningOn, due_at AS dueAt, last_useful_at AS lastUsefulAt, created_at AS createdAt, attempts,
+  is_without_consent AS isWithoutConsent`;
 
 /** The one text that may still go to a number that opted out: saying so, within five minutes (FCC, 47 CFR 64.1200). */
 const optOutConfirmation = 'opt-out-confirmation';
@@ -34,7 +37,7 @@ export async function claimMessages(
   return inTransaction(db, async (transaction) => {
     const due = await select<ClaimedMessage>(
       db,
-      `SELECT ${columns} FROM messages WHERE state = 'queued' AND next_try_at <= :now
+      `SELECT ${columns} FROM messages m WHERE state = 'queued' AND next_try_at <= :now AND NOT (${hasArrivedSql})
        ORDER BY next_try_at, id LIMIT :atMost FOR UPDATE SKIP LOCKED`,
       { now: new Date(claim.now), atMost: claim.atMost },
       transaction,
@@ -48,11 +51,19 @@ export async function claimMessages(
         await giveUpOn(db, transaction, giveUp, message, {
           code: 'opted-out',
           says: 'This number wants no texts.',
+          at: claim.now,
         });
       else if (claim.now > message.lastUsefulAt.getTime())
         await giveUpOn(db, transaction, giveUp, message, {
           code: 'too-late',
           says: 'Its time had passed before it could be sent.',
+          at: claim.now,
+        });
+      else if (await exceedsCareLimit(db, transaction, message, useful, claim.now))
+        await giveUpOn(db, transaction, giveUp, message, {
+          code: 'care-limit',
+          says: 'No consent is on file, and this number has had its texts of the day or the week.',
+          at: claim.now,
         });
       else useful.push(message);
     }

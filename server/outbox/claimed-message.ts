@@ -13,6 +13,7 @@ export interface ClaimedMessage {
   readonly calendarMethod: 'REQUEST' | 'CANCEL' | 'PUBLISH' | null;
   readonly callReason: string | null;
   readonly morningOn: string | null;
+  readonly isWithoutConsent: 0 | 1;
   readonly dueAt: Date;
   readonly lastUsefulAt: Date;
   readonly createdAt: Date;

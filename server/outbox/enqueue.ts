@@ -22,6 +22,8 @@ export interface OutgoingMessage {
   } | null;
   /** Reason of the call task when the message is given up; null when nobody needs to call. */
   readonly callReason: string | null;
+  /** Goes within the limits for care texts, because no consent is recorded for this number. */
+  readonly isWithoutConsent?: boolean;
   /** The morning the message is about, 'YYYY-MM-DD'. */
   readonly morningOn?: string | null;
   /** Epoch milliseconds, business clock. */
@@ -29,7 +31,12 @@ export interface OutgoingMessage {
   /** After this instant the message is not sent any more; a text about last night never goes out this morning. */
   readonly lastUsefulAt: number;
   readonly createdAt: number;
+  /** Due now and before everything that waits: for whoever has to know that nothing goes out. */
+  readonly goesFirst?: boolean;
 }
+
+/** The sender takes by this time; further back than anything that is still of use was due. */
+const goesFirstByMs = 24 * 3_600_000;
 
 /**
  * Queues the message in the transaction of its cause.
@@ -43,9 +50,10 @@ export async function enqueue(
   const [, touched] = await db.query(
     `INSERT IGNORE INTO messages (dedupe_key, kind, channel, household_id, family_member_id, staff_id, address, language,
        wording_versions, subject, body, calendar, calendar_method, call_reason, morning_on, due_at, last_useful_at,
-       next_try_at, created_at)
+       next_try_at, created_at, is_without_consent)
      VALUES (:dedupeKey, :kind, :channel, :householdId, :familyMemberId, :staffId, :address, :language, :wordingVersions,
-       :subject, :body, :calendar, :calendarMethod, :callReason, :morningOn, :dueAt, :lastUsefulAt, :dueAt, :createdAt)`,
+       :subject, :body, :calendar, :calendarMethod, :callReason, :morningOn, :dueAt, :lastUsefulAt, :nextTryAt, :createdAt,
+       :isWithoutConsent)`,
     {
       replacements: {
         ...message,
@@ -55,7 +63,9 @@ export async function enqueue(
         calendar: message.calendar?.content ?? null,
         calendarMethod: message.calendar?.method ?? null,
         morningOn: message.morningOn ?? null,
+        isWithoutConsent: message.isWithoutConsent ?? false,
         dueAt: new Date(message.dueAt),
+        nextTryAt: new Date(message.dueAt - (message.goesFirst ? goesFirstByMs : 0)),
         lastUsefulAt: new Date(message.lastUsefulAt),
         createdAt: new Date(message.createdAt),
       },

@@ -6,6 +6,8 @@ import type { ClaimedMessage } from './claimed-message';
 export interface FailureSays {
   readonly code: string;
   readonly says: string;
+  /** Business clock, epoch milliseconds. */
+  readonly at: number;
 }
 
 /** What a person must know about a message that did not reach anybody. */
@@ -32,10 +34,11 @@ export async function giveUpOn(
   await change(
     db,
     `UPDATE messages SET state = :state, failure_code = :code, failure_says = :says, claimed_by = NULL,
-       claimed_until = NULL WHERE id = :id`,
+       claimed_until = NULL, ended_at = :at WHERE id = :id`,
     {
       id: message.id,
       state,
+      at: new Date(failure.at),
       code: failure.code.slice(0, 40),
       says: failure.says.slice(0, 300),
     },

@@ -57,7 +57,7 @@ async function unknownSoFar(
   if (found.length === 0) return undefined;
   const known = await select<{ provider_id: string }>(
     db,
-    'SELECT provider_id FROM messages WHERE provider_id IN (:ids)',
+    'SELECT provider_id FROM message_attempts WHERE provider_id IN (:ids)',
     { ids: found.map(({ providerId }) => providerId) },
   );
   const ids = new Set(known.map((row) => row.provider_id));

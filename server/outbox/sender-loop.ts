@@ -1,3 +1,4 @@
+import { setMaxListeners } from 'node:events';
 import type { Logger } from 'pino';
 import type { Sender } from './sender';
 
@@ -23,6 +24,7 @@ export interface SenderLoopParts {
 }
 
 const pauseAfterErrorMs = 2_000;
+const handsMs = 10;
 
 /** Sends what falls due until it is stopped. An error is logged and the loop goes on: the next look may succeed. */
 export function runSender(parts: SenderLoopParts): SenderLoop {
@@ -30,15 +32,19 @@ export function runSender(parts: SenderLoopParts): SenderLoop {
   const idleMs = parts.idleMs ?? 400;
   const stopping = new AbortController();
   const { signal } = stopping;
+  // One listener a job and one for the sending itself.
+  setMaxListeners(0, signal);
 
   async function sending(): Promise<void> {
     while (!signal.aborted) {
       try {
+        // With every hand busy a look would find nothing and rest, although much is due.
+        await sender.handFree();
         await refresh();
         const taken = await sender.tick();
         if (taken === 0) await pause(idleMs, signal);
         // Gives the hands that are busy a moment before the next look.
-        else await pause(20, signal);
+        else await pause(handsMs, signal);
       } catch (error) {
         log.error({ err: error }, 'The outbox could not be read');
         await pause(pauseAfterErrorMs, signal);

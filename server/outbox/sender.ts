@@ -29,6 +29,8 @@ export interface SenderParts {
 export interface Sender {
   /** Takes what is due, up to the free hands, and begins to send it. @returns how many it took. */
   tick(): Promise<number>;
+  /** Waits until it could take something; at once while a hand is free. */
+  handFree(): Promise<void>;
   /** Ticks until nothing is due and nothing is in flight. */
   drain(): Promise<void>;
   /** Waits for what is in flight. */
@@ -36,6 +38,8 @@ export interface Sender {
 }
 
 const attemptLastsAtMostMs = 25_000;
+const reportsEveryMs = 1_000;
+const abandonedEveryMs = 1_000;
 
 export function createSender(parts: SenderParts): Sender {
   const { db, clock, log, giveUp } = parts;
@@ -47,6 +51,8 @@ export function createSender(parts: SenderParts): Sender {
     mail: pace(parts.perSecond?.mail ?? 10),
   };
   const inFlight = new Set<Promise<void>>();
+  let reportsAppliedAt = 0;
+  let abandonedSoughtAt = 0;
   const settling = (): Settling => ({ db, giveUp, claimedBy, now: clock.now() });
 
   function begin(work: Promise<void>, message: ClaimedMessage): void {
@@ -103,28 +109,56 @@ export function createSender(parts: SenderParts): Sender {
   }
 
   async function tick(): Promise<number> {
-    await applyDeliveryReports(db, clock.now(), giveUp);
+    const taken = await take();
+    // Looking for reports goes through everything that was sent lately: not between two texts of a busy evening. A text
+    // that arrived after all is not claimed meanwhile.
+    if (taken === 0 || Date.now() - reportsAppliedAt >= reportsEveryMs) {
+      await applyDeliveryReports(db, clock.now(), giveUp);
+      reportsAppliedAt = Date.now();
+    }
+    return taken;
+  }
+
+  async function take(): Promise<number> {
     const free = atOnce - inFlight.size;
     if (free <= 0) return 0;
-    const realNow = Date.now();
-    const claim = { claimedBy, claimedUntil: realNow + claimLastsMs };
-    const abandoned = await claimAbandoned(db, { ...claim, realNow, atMost: free });
-    for (const message of abandoned)
-      begin(recover(settling(), message, parts.sms, realNow), message);
-    const atMost = free - abandoned.length;
-    if (atMost === 0) return abandoned.length;
+    const isTime = Date.now() - abandonedSoughtAt >= abandonedEveryMs;
+    const found = isTime ? await takeAbandoned(free) : 0;
+    if (found === free) return found;
+    const taken = found + (await takeDue(free - found));
+    return taken > 0 || isTime ? taken : takeAbandoned(free);
+  }
+
+  async function takeDue(atMost: number): Promise<number> {
+    const claim = { claimedBy, claimedUntil: Date.now() + claimLastsMs };
     const due = await claimMessages(db, { ...claim, now: clock.now(), atMost }, giveUp);
     for (const message of due.claimed) begin(send(message, claim.claimedUntil), message);
-    return abandoned.length + due.claimed.length + due.givenUp;
+    return due.claimed.length + due.givenUp;
+  }
+
+  /** What a sender left in the middle waits long for its claim to end: it need not be sought between two texts. */
+  async function takeAbandoned(atMost: number): Promise<number> {
+    abandonedSoughtAt = Date.now();
+    const realNow = Date.now();
+    const claim = { claimedBy, claimedUntil: realNow + claimLastsMs };
+    const abandoned = await claimAbandoned(db, { ...claim, realNow, atMost });
+    for (const message of abandoned)
+      begin(recover(settling(), message, parts.sms, realNow), message);
+    return abandoned.length;
   }
 
   async function settled(): Promise<void> {
     await Promise.all(inFlight);
   }
 
+  async function handFree(): Promise<void> {
+    if (inFlight.size >= atOnce) await Promise.race(inFlight);
+  }
+
   return {
     tick,
     settled,
+    handFree,
     async drain() {
       for (;;) {
         const taken = await tick();

@@ -41,16 +41,27 @@ export function settleSent(
   message: ClaimedMessage,
   sent: { readonly providerId: string; readonly segments: number | null },
 ): Promise<boolean> {
-  const { db, now } = settling;
-  return whenStillOurs(settling, message, async (transaction) => {
-    await change(
+  const { db, now, claimedBy } = settling;
+  // One statement finds out whether it is still ours and settles it: this runs for every message there is.
+  return inTransaction(db, async (transaction) => {
+    const settled = await change(
       db,
       `UPDATE messages SET state = 'sent', provider_id = :providerId, segments = :segments, sent_at = :now,
-         claimed_by = NULL, claimed_until = NULL, failure_code = NULL, failure_says = NULL WHERE id = :id`,
-      { id: message.id, ...sent, now: new Date(now) },
+         claimed_by = NULL, claimed_until = NULL, failure_code = NULL, failure_says = NULL
+       WHERE id = :id AND state = 'sending' AND claimed_by = :claimedBy`,
+      { id: message.id, ...sent, claimedBy, now: new Date(now) },
+      transaction,
+    );
+    if (settled === 0) return false;
+    await change(
+      db,
+      `INSERT IGNORE INTO message_attempts (message_id, provider_id, taken_at)
+       VALUES (:id, :providerId, :now)`,
+      { id: message.id, providerId: sent.providerId, now: new Date(now) },
       transaction,
     );
     await announce(db, transaction, 'messages', message.id);
+    return true;
   });
 }
 
@@ -69,7 +80,7 @@ export function settleFailed(
     if (failure.code === optedOutAtProvider)
       await rememberOptOut(db, transaction, message.address, now);
     if (failure.kind === 'refused' || message.attempts >= mostAttempts)
-      await giveUpOn(db, transaction, giveUp, message, says);
+      await giveUpOn(db, transaction, giveUp, message, { ...says, at: now });
     else
       await queueAgain(db, transaction, message, {
         ...says,
@@ -131,7 +142,7 @@ export function settleGivenUp(
   failure: { readonly code: string; readonly says: string },
 ): Promise<boolean> {
   return whenStillOurs(settling, message, (transaction) =>
-    giveUpOn(settling.db, transaction, settling.giveUp, message, failure),
+    giveUpOn(settling.db, transaction, settling.giveUp, message, { ...failure, at: settling.now }),
   );
 }
 

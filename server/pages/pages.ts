@@ -35,7 +35,7 @@ export function pages(context: Context): Router {
       limit({ name: 'link-page', hits: 120, seconds: 60 }),
       async (req, res) => {
         const token = String(req.params['token']);
-        const link = /^[A-Za-z0-9_-]{20,64}$/.test(token) ? await linkOf(context.db, token) : null;
+        const link = /^[A-Za-z0-9_-]{16,64}$/.test(token) ? await linkOf(context.db, token) : null;
         const language = link && ofFamily().includes(link.language) ? link.language : 'en';
         res
           .set('Cache-Control', 'no-store')

@@ -2,8 +2,12 @@ import type { Sequelize, Transaction } from 'sequelize';
 import { select } from '../database/connection';
 import { notFound, Problem } from '../http/problem';
 import type { Day } from '../../shared/domain/day';
-import type { FastingProtocol } from '../../shared/domain/fasting-protocol';
-import type { LaboratoryProfile } from '../../shared/domain/specimen-clocks';
+import {
+  protocolDefaults,
+  type FastingBand,
+  type FastingProtocol,
+} from '../../shared/domain/fasting-protocol';
+import { profileDefaults, type LaboratoryProfile } from '../../shared/domain/specimen-clocks';
 import { dayOf } from '../../shared/domain/zone';
 
 export interface StoredProtocol extends FastingProtocol {
@@ -24,7 +28,12 @@ export interface StoredProfile extends LaboratoryProfile {
 /** What the `body` column of a fasting protocol holds. */
 export type ProtocolBody = Pick<
   FastingProtocol,
-  'usualWaitMinutes' | 'eatAgainAfterMinutes' | 'bands'
+  | 'usualWaitMinutes'
+  | 'eatAgainAfterMinutes'
+  | 'allowedItems'
+  | 'individualPlanCautions'
+  | 'wakeToCollectionMinutes'
+  | 'bands'
 >;
 /** What the `body` column of a laboratory profile holds. */
 export type ProfileBody = Omit<
@@ -44,8 +53,8 @@ interface SignedRow<Body> {
   signed_at: Date | null;
 }
 
-type ProtocolRow = SignedRow<ProtocolBody> & { title: string; has_starting_values: 0 | 1 };
-type ProfileRow = SignedRow<ProfileBody> & { name: string };
+type ProtocolRow = SignedRow<StoredProtocolBody> & { title: string; has_starting_values: 0 | 1 };
+type ProfileRow = SignedRow<StoredProfileBody> & { name: string };
 
 const signedFrom = (table: string): string =>
   `SELECT signed.*, sites.short_name, sites.zone, staff.full_name AS signed_by
@@ -53,8 +62,25 @@ const signedFrom = (table: string): string =>
    JOIN sites ON sites.id = signed.site_id
    LEFT JOIN staff ON staff.id = signed.signed_by_staff_id`;
 
+/** Of the signed versions whose day has come, the newest. */
 const inForce = `WHERE signed.site_id = :siteId AND signed.effective_on <= :on AND signed.signed_at IS NOT NULL
-   ORDER BY signed.effective_on DESC, signed.version DESC LIMIT 1`;
+   ORDER BY signed.version DESC LIMIT 1`;
+
+/**
+ * SQL for the id of the version in force on a day, as `inForce` says it: a version that is signed later takes over on
+ * its day, also for mornings planned before. Before any is in force, what the series was planned with holds.
+ */
+export const idInForce = (
+  table: 'fasting_protocols' | 'laboratory_profiles',
+  {
+    siteId,
+    on,
+    otherwise,
+  }: { readonly siteId: string; readonly on: string; readonly otherwise: string },
+): string =>
+  `COALESCE((SELECT in_force.id FROM ${table} in_force
+     WHERE in_force.site_id = ${siteId} AND in_force.effective_on <= ${on} AND in_force.signed_at IS NOT NULL
+     ORDER BY in_force.version DESC LIMIT 1), ${otherwise})`;
 
 export async function laboratoryProfileOf(
   db: Sequelize,
@@ -137,7 +163,7 @@ async function protocolsWhere(
   return rows.map((row) => {
     const hasStartingValues = row.has_starting_values === 1;
     return {
-      ...row.body,
+      ...wholeProtocolBody(row.body),
       ...signatureOf(row),
       title: row.title,
       isStartingValues: hasStartingValues,
@@ -147,6 +173,29 @@ async function protocolsWhere(
     };
   });
 }
+
+/** A body as it is stored may be older than some of its fields. */
+export type StoredProtocolBody = Partial<ProtocolBody> &
+  Pick<ProtocolBody, 'usualWaitMinutes' | 'eatAgainAfterMinutes'> & {
+    readonly bands: readonly (Omit<FastingBand, 'nothingFrom'> & Partial<FastingBand>)[];
+  };
+
+export function wholeProtocolBody(body: StoredProtocolBody): ProtocolBody {
+  return {
+    ...protocolDefaults,
+    ...body,
+    bands: body.bands.map((band) => ({ ...band, nothingFrom: band.nothingFrom ?? null })),
+  };
+}
+
+/** A body as it is stored may be older than some of its fields. */
+export type StoredProfileBody = Omit<ProfileBody, keyof typeof profileDefaults> &
+  Partial<Pick<ProfileBody, keyof typeof profileDefaults>>;
+
+export const wholeProfileBody = (body: StoredProfileBody): ProfileBody => ({
+  ...profileDefaults,
+  ...body,
+});
 
 async function profilesWhere(
   db: Sequelize,
@@ -161,7 +210,7 @@ async function profilesWhere(
     transaction,
   );
   return rows.map((row) => ({
-    ...row.body,
+    ...wholeProfileBody(row.body),
     ...signatureOf(row),
     name: row.name,
     says: `${row.name}, version ${row.version}.`,

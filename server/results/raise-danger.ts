@@ -1,10 +1,13 @@
 import type { Transaction } from 'sequelize';
 import { isCritical, isPositive } from '../../shared/domain/critical';
+import { raiseAlert } from '../alerts/raise-alert';
 import { raiseCall } from '../calls/calls';
 import type { Context } from '../context';
 import { select } from '../database/connection';
 import type { SpecimenRow } from '../specimens/specimen-rows';
 import { findingsOf, type ResultRow } from './current-results';
+
+const dayMs = 86_400_000;
 
 /** Everything critical is told by a person: a call task at once, and for a positive the reminder to report. */
 export async function raiseDanger(
@@ -37,6 +40,12 @@ export async function raiseDanger(
     reason: positive ? 'positive-result' : 'critical-result',
     openKey: `result:${subject}`,
     detail: `Specimen ${row.number}: ${entry.test} ${entry.value}`,
+  });
+  await raiseAlert(context, transaction, {
+    kind: 'critical-result',
+    siteId: row.site_id,
+    cause: `${subject}:${now}`,
+    usefulUntil: now + dayMs,
   });
   if (positive)
     await raiseCall(context.db, transaction, {

@@ -1,10 +1,10 @@
-import type { PlanSeriesRequest } from '../../shared/contracts/series';
+import type { DayPlaces } from '../../shared/contracts/series';
+import { obstacleAt } from '../../shared/domain/booked-places';
 import { morningOn } from '../../shared/domain/series-dates';
 import { Problem, type FieldError } from '../http/problem';
 import type { ClinicWords } from '../wording/clinic-words';
 import { refusalSays } from './refusal-says';
-import { seriesChild, type Search } from './search';
-import type { PlannableOrder } from './series-orders';
+import { seriesChild, type Search, type SearchedChild } from './search';
 
 /**
  * Looks at every chosen place again, as the clinic stands now and with the child's age on that very day.
@@ -13,22 +13,22 @@ import type { PlannableOrder } from './series-orders';
 export function refuseDays(
   words: ClinicWords,
   { request, protocol }: Search,
-  days: PlanSeriesRequest['days'],
-  orders: readonly PlannableOrder[],
+  days: readonly DayPlaces[],
+  children: readonly SearchedChild[],
 ): void {
-  const callMe = new Map(orders.map((order) => [order.childId, order.callMe]));
+  const callMe = new Map(children.map((child) => [child.childId, child.callMe]));
   const taken: FieldError[] = [];
   const refused: FieldError[] = [];
   days.forEach((day, dayIndex) => {
     const seen = new Set<string>();
+    const booked = request.booked.filter(({ on }) => on === day.on);
     day.places.forEach((chosen, placeIndex) => {
       const path = `days.${dayIndex}.places.${placeIndex}`;
-      const order = orders.find(({ childId }) => childId === chosen.childId);
-      const isSame = (place: { arrivalTime: string; roomId?: number }): boolean =>
-        place.arrivalTime === chosen.arrivalTime &&
-        (place.roomId ?? chosen.roomId) === chosen.roomId;
-      const place = request.places.find(isSame);
-      if (!order || !place) {
+      const child = children.find(({ childId }) => childId === chosen.childId);
+      const place = request.places.find(
+        (one) => one.arrivalTime === chosen.arrivalTime && one.roomId === chosen.roomId,
+      );
+      if (!child || !place) {
         refused.push({ path, message: words.sentence('The clinic has no such place.') });
         return;
       }
@@ -36,8 +36,13 @@ export function refuseDays(
       if (seen.has(key))
         refused.push({ path, message: words.sentence('Two children cannot have the same place.') });
       seen.add(key);
-      const child = seriesChild(order, day.on, protocol);
-      const alone = { ...request, places: [place], booked: [], children: [child] };
+      const alone = {
+        ...request,
+        places: [place],
+        booked: [],
+        heldDays: [],
+        children: [seriesChild(child, day.on, day.on, protocol)],
+      };
       refused.push(
         ...morningOn(alone, day.on).refused.map((refusal) => ({
           path,
@@ -46,7 +51,8 @@ export function refuseDays(
           }),
         })),
       );
-      if (request.booked.some((booked) => booked.on === day.on && isSame(booked)))
+      const isOver = booked.length + day.places.length > (request.turnover?.limit ?? Infinity);
+      if (isOver || obstacleAt(place, booked, request.turnover) !== null)
         taken.push({ path, message: 'This place is taken.' });
     });
   });

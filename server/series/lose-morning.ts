@@ -7,6 +7,8 @@ import { change, inTransaction, select } from '../database/connection';
 import { notFound, Problem } from '../http/problem';
 import { announce } from '../live/announce';
 import { tellVisitCancelled } from '../messages/visit-cancelled';
+import { renumber } from './renumber';
+import { renewVisitsChanged } from './tell-visits-changed';
 
 interface MorningRow {
   readonly id: number;
@@ -17,7 +19,8 @@ interface MorningRow {
 
 /**
  * A planned morning does not take place. Its place is free again, its messages are taken back and its calendar entry is
- * cancelled; specimens that were taken stay valid and keep their numbers. Losing it twice changes nothing.
+ * cancelled; specimens that were taken stay valid and keep their numbers, mornings to come are numbered anew. Losing it
+ * twice changes nothing.
  * @throws Problem 409 'morning-over' when the collection has begun or is done
  */
 export async function loseMorning(
@@ -27,16 +30,34 @@ export async function loseMorning(
   morningId: number,
   reason: string,
 ): Promise<void> {
-  const { db } = context;
-  await inTransaction(db, async (transaction) => {
-    const [morning] = await heldMornings(context, staff, 'mornings.id', morningId, transaction);
-    if (!morning) throw notFound('This morning');
-    if (morning.state === 'lost') return;
-    if (morning.state !== 'planned' && morning.state !== 'here')
-      throw new Problem(409, 'morning-over', 'The collection of this morning has begun already.');
-    await loseMornings(context, transaction, actor, [morning], reason);
-    await settleSeries(context, transaction, morning.seriesId);
-  });
+  await inTransaction(context.db, (transaction) =>
+    loseOneMorning(context, transaction, { actor, staff }, morningId, reason),
+  );
+}
+
+/**
+ * The same within a transaction.
+ * @param check throws where this morning must not be lost that way
+ * @returns whether it was planned until now
+ */
+export async function loseOneMorning(
+  context: Context,
+  transaction: Transaction,
+  { actor, staff }: { readonly actor: Actor; readonly staff: StaffMember },
+  morningId: number,
+  reason: string,
+  check: () => void = () => undefined,
+): Promise<boolean> {
+  const [morning] = await heldMornings(context, staff, 'mornings.id', morningId, transaction);
+  if (!morning) throw notFound('This morning');
+  check();
+  if (morning.state === 'lost') return false;
+  if (morning.state !== 'planned' && morning.state !== 'here')
+    throw new Problem(409, 'morning-over', 'The collection of this morning has begun already.');
+  await loseMornings(context, transaction, actor, [morning], reason);
+  await renumber(context, transaction, morning.seriesId);
+  await settleSeries(context, transaction, morning.seriesId);
+  return true;
 }
 
 /** Closes a series with fewer mornings or for another reason; mornings to come are lost. */
@@ -103,11 +124,21 @@ async function loseMornings(
     await announce(db, transaction, 'mornings', id);
   }
   const ids = mornings.map(({ id }) => id);
-  if (ids.length > 0) await tellVisitCancelled(context, transaction, ids);
+  if (ids.length === 0) return;
+  await tellVisitCancelled(context, transaction, ids);
+  const households = await select<{ id: number }>(
+    db,
+    `SELECT DISTINCT children.household_id AS id FROM mornings JOIN children ON children.id = mornings.child_id
+     WHERE mornings.id IN (:ids)`,
+    { ids },
+    transaction,
+  );
+  for (const { id } of households)
+    await renewVisitsChanged(context, transaction, id, `lost-${ids.join('-')}`);
 }
 
 /** When no morning is to come any more, the series waits for the results of what was collected. */
-async function settleSeries(
+export async function settleSeries(
   { db }: Context,
   transaction: Transaction,
   seriesId: number,

@@ -2,8 +2,13 @@ import type { Sequelize, Transaction } from 'sequelize';
 import type { Caution, Feeding, MorningState } from '../../shared/contracts/common';
 import type { Day, Instant, LocalTime } from '../../shared/domain/day';
 import { fastingPlan, type FastingPlan } from '../../shared/domain/fasting-plan';
+import { effectiveVersion, ownPlanOfMorning } from '../../shared/domain/individual-plan';
+import type { UsualNight } from '../../shared/domain/usual-night';
+import { ageOn } from '../../shared/domain/day';
 import { select } from '../database/connection';
-import { protocolsByIds, type StoredProtocol } from '../protocols/protocols';
+import { storedPlansOf, type StoredPlan } from '../individual-plans/stored-plans';
+import { usualNightsOf } from '../individual-plans/usual-nights';
+import { idInForce, protocolsByIds, type StoredProtocol } from '../protocols/protocols';
 import { localTimeOfColumn, sitesOf, type Site } from '../sites/sites';
 
 /** One planned collection with everything that its times depend on. */
@@ -44,9 +49,11 @@ export interface MorningPlan {
   readonly readyMinutes: number;
   readonly calendarUid: string;
   readonly calendarSequence: number;
-  /** The laboratory profile that the series was planned with. */
+  /** The laboratory profile in force on that day. */
   readonly laboratoryProfileId: number;
   readonly protocol: StoredProtocol;
+  /** The clinician's plan for this child that holds on this morning; null where there is none that fits it. */
+  readonly individualPlan: StoredPlan | null;
   readonly plan: FastingPlan;
 }
 
@@ -93,6 +100,16 @@ interface MorningRow {
   laboratory_profile_id: number;
 }
 
+const onItsDay = { siteId: 'mornings.site_id', on: 'mornings.planned_on' };
+const protocolId = idInForce('fasting_protocols', {
+  ...onItsDay,
+  otherwise: 'series.fasting_protocol_id',
+});
+const profileId = idInForce('laboratory_profiles', {
+  ...onItsDay,
+  otherwise: 'series.laboratory_profile_id',
+});
+
 /**
  * The mornings in order of arrival, lost ones included, each with its fasting plan. This is the one place where rows
  * become fasting plans, so that every screen, text and letter shows the same times.
@@ -107,7 +124,7 @@ export async function morningPlansOf(
   const rows = await select<MorningRow>(
     db,
     `SELECT mornings.id AS morning_id, mornings.*, series.order_id, series.mornings_planned,
-       series.fasting_protocol_id, series.laboratory_profile_id,
+       ${protocolId} AS fasting_protocol_id, ${profileId} AS laboratory_profile_id,
        children.household_id, children.full_name, children.call_me, children.family_label, children.born_on,
        children.feeding, children.cautions, households.travel_minutes, households.ready_minutes,
        rooms.name AS room_name
@@ -127,12 +144,20 @@ export async function morningPlansOf(
     rows.map((row) => row.fasting_protocol_id),
     transaction,
   );
+  const childIds = rows.map((row) => row.child_id);
+  const ownPlans = await storedPlansOf(db, childIds, transaction);
+  const usualNights = await usualNightsOf(db, childIds, transaction);
   const siteById = new Map(sites.map((site) => [site.id, site]));
   const protocolById = new Map(protocols.map((protocol) => [protocol.id, protocol]));
   return rows.flatMap((row) => {
     const site = siteById.get(row.site_id);
     const protocol = protocolById.get(row.fasting_protocol_id);
-    return site && protocol ? [planFrom(row, site, protocol)] : [];
+    if (!site || !protocol) return [];
+    const ofChild = ownPlans.filter((plan) => plan.childId === row.child_id);
+    const morning = { seriesId: row.series_id, on: row.planned_on };
+    const individualPlan = effectiveVersion(ofChild, morning);
+    const usual = usualNights.get(row.child_id);
+    return [planFrom(row, { site, protocol, individualPlan, usual })];
   });
 }
 
@@ -145,8 +170,17 @@ function whereOf(wanted: MorningsWanted): string {
     : 'children.household_id = :householdId AND mornings.planned_on = :on';
 }
 
-function planFrom(row: MorningRow, site: Site, protocol: StoredProtocol): MorningPlan {
+interface PlanSources {
+  readonly site: Site;
+  readonly protocol: StoredProtocol;
+  readonly individualPlan: StoredPlan | null;
+  readonly usual: UsualNight | undefined;
+}
+
+function planFrom(row: MorningRow, sources: PlanSources): MorningPlan {
+  const { site, protocol, individualPlan } = sources;
   const arrivalAt = row.arrival_at.getTime();
+  const plan = fastingPlanOf(row, sources, arrivalAt);
   return {
     morningId: row.morning_id,
     version: row.version,
@@ -184,16 +218,32 @@ function planFrom(row: MorningRow, site: Site, protocol: StoredProtocol): Mornin
     calendarSequence: row.calendar_sequence,
     laboratoryProfileId: row.laboratory_profile_id,
     protocol,
-    plan: fastingPlan({
-      arrivalAt,
-      zone: site.zone,
-      bornOn: row.born_on,
-      feeding: row.feeding,
-      protocol,
-      cautions: row.cautions,
-      travelMinutes: row.travel_minutes,
-      readyMinutes: row.ready_minutes,
-      usualWaitMinutes: site.usualWaitMinutes,
-    }),
+    individualPlan: plan.kind === 'standard' ? individualPlan : null,
+    plan,
   };
+}
+
+/** The clinician's plan for the child comes before the clinic's protocol. */
+function fastingPlanOf(
+  row: MorningRow,
+  { site, protocol, individualPlan, usual }: PlanSources,
+  arrivalAt: Instant,
+): FastingPlan {
+  const common = {
+    arrivalAt,
+    zone: site.zone,
+    feeding: row.feeding,
+    travelMinutes: row.travel_minutes,
+    readyMinutes: row.ready_minutes,
+    usualWaitMinutes: site.usualWaitMinutes,
+    usual,
+  };
+  if (individualPlan)
+    return ownPlanOfMorning(individualPlan.body, individualPlan.version, {
+      ...common,
+      ageMonths: ageOn(row.born_on, row.planned_on).months,
+      eatAgainAfterMinutes: protocol.eatAgainAfterMinutes,
+      protocolVersion: protocol.version,
+    });
+  return fastingPlan({ ...common, bornOn: row.born_on, protocol, cautions: row.cautions });
 }

@@ -1,34 +1,35 @@
-import { randomUUID } from 'node:crypto';
-import { UniqueConstraintError, type Transaction } from 'sequelize';
-import type { PlanSeriesAnswer, PlanSeriesRequest } from '../../shared/contracts/series';
-import { addDays, compareDays, type Day } from '../../shared/domain/day';
-import { instantOf } from '../../shared/domain/zone';
+import type { Transaction } from 'sequelize';
+import type { PlanSeries, PlanSeriesAnswer, UsualNightAnswer } from '../../shared/contracts/series';
+import { addDays, compareDays } from '../../shared/domain/day';
 import { record, type Actor } from '../access-record/record';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
-import { inTransaction, select } from '../database/connection';
-import { invalid, type FieldError, type Problem } from '../http/problem';
+import { change, inTransaction, select } from '../database/connection';
+import { invalid, Problem, type FieldError } from '../http/problem';
 import { announce } from '../live/announce';
 import { sendCalendarEntries } from '../messages/calendar-entries';
 import { planHouseholdMessages } from '../messages/plan-messages';
 import type { Site } from '../sites/sites';
 import { clinicWords } from '../wording/clinic-words';
-import { placeTakenProblem, refuseDays } from './check-days';
+import { refuseDays } from './check-days';
 import { familyWillHear } from './family-will-hear';
-import { searchFor } from './search';
-import { Morning, Series } from './series-model';
+import { createMorning, placeTaken, type MorningPlace } from './morning-rows';
+import { proposalFor } from './proposals';
+import { searchFor, withNights } from './search';
+import { Series } from './series-model';
 import { plannableOrders, type PlannableOrder } from './series-orders';
 
 /**
  * Plans the mornings of one child, or of brothers and sisters together: all of them or none. Messages and calendar
  * entries are queued in the same transaction.
- * @throws Problem 409 'already-planned', 'not-ready', 'place-taken', 'day-refused'; 422 with fields
+ * @throws Problem 409 'already-planned', 'not-ready'; 'place-taken', 'day-refused' with the next `proposal`; 422 with
+ *   fields
  */
 export async function planSeries(
   context: Context,
   actor: Actor,
   staff: StaffMember,
-  request: PlanSeriesRequest,
+  request: PlanSeries,
 ): Promise<PlanSeriesAnswer> {
   const { db, clock } = context;
   const now = clock.now();
@@ -36,7 +37,8 @@ export async function planSeries(
   const days = [...request.days].sort((left, right) => compareDays(left.on, right.on));
   try {
     return await inTransaction(db, async (transaction) => {
-      const orders = await plannableOrders(db, staff, request.orderIds, transaction);
+      const plannable = await plannableOrders(db, staff, request.orderIds, transaction);
+      const orders = withNights(plannable, request.nights);
       const [first] = orders;
       const [firstDay] = days;
       if (!first || !firstDay)
@@ -45,10 +47,20 @@ export async function planSeries(
       await refuseWrongEscorts(context, request, orders, transaction);
       const search = await searchFor(
         db,
-        { siteId: first.siteId, orders, from: firstDay.on, count: days.length, now },
+        {
+          siteId: first.siteId,
+          children: orders,
+          from: firstDay.on,
+          weeks: 1,
+          count: days.length,
+          now,
+          needsRide: request.needsRide,
+          language: staff.language,
+        },
         transaction,
       );
       refuseDays(words, search, request.days, orders);
+      await keepNights(context, transaction, request.nights, orders);
 
       const series: PlanSeriesAnswer['series'] = [];
       const morningIds: number[] = [];
@@ -59,6 +71,7 @@ export async function planSeries(
           fastingProtocolId: search.protocol.id,
           laboratoryProfileId: search.profile.id,
           staffId: staff.id,
+          needsRide: request.needsRide,
           mornings: days.flatMap((day) =>
             day.places
               .filter((place) => place.childId === order.childId)
@@ -92,7 +105,47 @@ export async function planSeries(
       };
     });
   } catch (error) {
-    throw placeTaken(error) ?? error;
+    throw await withNextOffers(context, staff, request, placeTaken(error) ?? error);
+  }
+}
+
+/** Who came second gets the places that are left together with the answer. */
+async function withNextOffers(
+  context: Context,
+  staff: StaffMember,
+  request: PlanSeries,
+  error: unknown,
+): Promise<unknown> {
+  if (!(error instanceof Problem) || !['place-taken', 'day-refused'].includes(error.code))
+    return error;
+  const [from = ''] = request.days.map(({ on }) => on).sort();
+  const orders = await plannableOrders(context.db, staff, request.orderIds);
+  const proposal = await proposalFor(context, staff, orders, {
+    from,
+    morningsPlanned: request.days.length,
+    weeks: 4,
+    nights: request.nights,
+    needsRide: request.needsRide,
+    siblingsMayPart: false,
+  });
+  return new Problem(error.status, error.code, error.title, { ...error.more, proposal });
+}
+
+/** What the family told about the child's nights stays with the child. */
+async function keepNights(
+  { db }: Context,
+  transaction: Transaction,
+  nights: readonly UsualNightAnswer[],
+  orders: readonly PlannableOrder[],
+): Promise<void> {
+  for (const { childId, lastMealTime, nightFeedTimes } of nights) {
+    if (!orders.some((order) => order.childId === childId)) continue;
+    await change(
+      db,
+      'UPDATE children SET usual_last_meal_time = :lastMealTime, night_feed_times = :feeds WHERE id = :childId',
+      { childId, lastMealTime, feeds: JSON.stringify(nightFeedTimes) },
+      transaction,
+    );
   }
 }
 
@@ -102,18 +155,14 @@ export interface NewSeries {
   readonly fastingProtocolId: number;
   readonly laboratoryProfileId: number;
   readonly staffId: number;
+  readonly needsRide?: boolean;
   /** In order of days; the first is number 1. */
-  readonly mornings: readonly {
-    readonly on: Day;
-    readonly arrivalTime: string;
-    readonly roomId: number;
-    readonly escortFamilyMemberId: number | null;
-  }[];
+  readonly mornings: readonly (MorningPlace & { readonly escortFamilyMemberId: number | null })[];
 }
 
 /** Writes the rows of a series that was found to fit. */
 export async function createSeries(
-  { clock, settings }: Context,
+  context: Context,
   transaction: Transaction,
   { order, site, mornings, ...ids }: NewSeries,
 ): Promise<{ readonly seriesId: number; readonly morningIds: number[] }> {
@@ -125,43 +174,29 @@ export async function createSeries(
       fastingProtocolId: ids.fastingProtocolId,
       laboratoryProfileId: ids.laboratoryProfileId,
       morningsPlanned: mornings.length,
+      needsRide: ids.needsRide ?? false,
       createdByStaffId: ids.staffId,
-      createdAt: new Date(clock.now()),
+      createdAt: new Date(context.clock.now()),
     },
     { transaction },
   );
-  const host = new URL(settings.origin).hostname;
   const morningIds: number[] = [];
-  for (const [index, morning] of mornings.entries()) {
-    const { on, arrivalTime, roomId, escortFamilyMemberId } = morning;
-    const { id } = await Morning.create(
-      {
+  for (const [index, { escortFamilyMemberId, ...place }] of mornings.entries())
+    morningIds.push(
+      await createMorning(context, transaction, site, {
         seriesId: series.id,
         childId: order.childId,
-        siteId: site.id,
         number: index + 1,
-        plannedOn: on,
-        arrivalTime,
-        arrivalAt: new Date(instantOf({ on, time: arrivalTime, zone: site.zone })),
-        roomId,
-        placeKey: placeKeyOf(site.id, on, arrivalTime, roomId),
+        place,
         escortFamilyMemberId,
-        calendarUid: `${randomUUID()}@${host}`,
-      },
-      { transaction },
+      }),
     );
-    morningIds.push(id);
-  }
   return { seriesId: series.id, morningIds };
 }
 
-/** One child a place: the database takes this key once. */
-export const placeKeyOf = (siteId: number, on: Day, arrivalTime: string, roomId: number): string =>
-  `${siteId}:${on}:${arrivalTime}:${roomId}`;
-
 function refuseWrongDays(
-  { days: asked }: PlanSeriesRequest,
-  days: PlanSeriesRequest['days'],
+  { days: asked }: PlanSeries,
+  days: PlanSeries['days'],
   orders: readonly PlannableOrder[],
 ): void {
   const errors: FieldError[] = [];
@@ -193,7 +228,7 @@ function refuseWrongDays(
 
 async function refuseWrongEscorts(
   { db }: Context,
-  { escorts, days }: PlanSeriesRequest,
+  { escorts, days }: PlanSeries,
   orders: readonly PlannableOrder[],
   transaction: Transaction,
 ): Promise<void> {
@@ -223,11 +258,4 @@ async function refuseWrongEscorts(
     ];
   });
   if (errors.length > 0) throw invalid(errors);
-}
-
-/** Two people planned the same at the same moment: the database let one of them in. */
-function placeTaken(error: unknown): Problem | null {
-  if (!(error instanceof UniqueConstraintError)) return null;
-  if ('mornings_place' in error.fields) return placeTakenProblem();
-  return null;
 }

@@ -1,6 +1,6 @@
 import type { z } from 'zod';
 import type {
-  PlanSeriesRequest,
+  planSeriesRequest,
   PreviewSeriesAnswer,
   proposeSeriesRequest,
   SeriesProposal,
@@ -11,6 +11,7 @@ import {
   longestEndsAt,
   wallClockForFamily,
   type IndividualReason,
+  type StandardPlan,
 } from '../../shared/domain/fasting-plan';
 import { proposeRuns } from '../../shared/domain/series-dates';
 import { dayOf, instantOf, localPartsOf } from '../../shared/domain/zone';
@@ -21,64 +22,72 @@ import { invalid } from '../http/problem';
 import { siteOf } from '../sites/sites';
 import { ageInWords } from '../wording/clinic-measures';
 import { clinicWords, type ClinicWords } from '../wording/clinic-words';
-import { refusalSays } from './refusal-says';
-import { searchFor } from './search';
-import { plannableOrders } from './series-orders';
+import { restsOnSays, searchedSays } from './proposal-says';
+import { searchFor, withNights } from './search';
+import { plannableOrders, type PlannableOrder } from './series-orders';
+
+type Wanted = z.output<typeof proposeSeriesRequest>;
 
 /** All runs that fit the children, the clinic, the laboratory and the rooms; for every refused day, why. */
 export async function proposeSeries(
-  { db, clock }: Context,
+  context: Context,
   actor: Actor,
   staff: StaffMember,
-  { orderIds, from, morningsPlanned }: z.output<typeof proposeSeriesRequest>,
+  wanted: Wanted,
 ): Promise<SeriesProposal> {
-  const now = clock.now();
-  const words = clinicWords(staff.language);
-  const orders = await plannableOrders(db, staff, orderIds);
-  const siteId = orders[0]?.siteId ?? staff.siteId;
-  const site = await siteOf(db, siteId);
-  const today = dayOf(now, site.zone);
-  const start = compareDays(from, today) < 0 ? today : from;
-  const search = await searchFor(db, { siteId, orders, from: start, count: morningsPlanned, now });
-  const { days, runs } = proposeRuns(search.request);
-  const callMe = new Map(orders.map((order) => [order.childId, order.callMe]));
+  const { db, clock } = context;
+  const orders = await plannableOrders(db, staff, wanted.orderIds);
+  const proposal = await proposalFor(context, staff, orders, wanted);
   await record(db, undefined, actor, {
     action: 'seen',
     matter: 'series-proposal',
     childIds: orders.map((order) => order.childId),
-    at: now,
+    at: clock.now(),
+  });
+  return proposal;
+}
+
+/** The proposal without noting that somebody has seen it. */
+export async function proposalFor(
+  { db, clock }: Context,
+  staff: StaffMember,
+  orders: readonly PlannableOrder[],
+  { from, morningsPlanned, weeks, nights, needsRide, siblingsMayPart }: Omit<Wanted, 'orderIds'>,
+): Promise<SeriesProposal> {
+  const now = clock.now();
+  const words = clinicWords(staff.language);
+  const siteId = orders[0]?.siteId ?? staff.siteId;
+  const site = await siteOf(db, siteId);
+  const today = dayOf(now, site.zone);
+  const start = compareDays(from, today) < 0 ? today : from;
+  const children = withNights(orders, nights);
+  const search = await searchFor(db, {
+    siteId,
+    children,
+    from: start,
+    weeks,
+    count: morningsPlanned,
+    now,
+    needsRide,
+    siblingsMayPart,
+    language: staff.language,
   });
   return {
-    children: [...orders]
+    ...searchedSays(words, search, proposeRuns(search.request), children),
+    ...restsOnSays(words, search),
+    children: [...children]
       .sort((left, right) => compareDays(right.bornOn, left.bornOn))
-      .map(({ orderId, childId, fullName, bornOn }) => ({
+      .map(({ orderId, childId, fullName, callMe, bornOn, ...night }) => ({
         orderId,
         childId,
         fullName,
+        callMe,
         ageInWords: ageInWords(words, bornOn, start),
+        usualNight: {
+          lastMealTime: night.usualLastMealTime,
+          nightFeedTimes: [...night.nightFeedTimes],
+        },
       })),
-    days: days.map(({ on, placesLeft, refused }) => ({
-      on,
-      placesLeft,
-      placesInAll: search.request.places.length,
-      refused: refused.map((refusal) => ({
-        code: refusal.code,
-        says: refusalSays(words, refusal, callMe),
-      })),
-    })),
-    runs: runs.map((run) => ({
-      startsInDays: run.startsInDays,
-      days: run.days.map(({ on, places }) => ({
-        on,
-        places: places.map(({ childId, arrivalTime, roomId }) => ({
-          childId,
-          arrivalTime,
-          roomId,
-        })),
-      })),
-    })),
-    protocolSays: words.sentence(search.protocol.says),
-    laboratorySays: words.sentence(search.profile.says),
   };
 }
 
@@ -87,18 +96,23 @@ export async function previewSeries(
   { db, clock }: Context,
   actor: Actor,
   staff: StaffMember,
-  { orderIds, days }: Pick<PlanSeriesRequest, 'orderIds' | 'days'>,
+  {
+    orderIds,
+    days,
+    nights,
+  }: Pick<z.output<typeof planSeriesRequest>, 'orderIds' | 'days' | 'nights'>,
 ): Promise<PreviewSeriesAnswer> {
   const now = clock.now();
   const words = clinicWords(staff.language);
-  const orders = await plannableOrders(db, staff, orderIds);
+  const orders = withNights(await plannableOrders(db, staff, orderIds), nights);
   const first = [...days].sort((left, right) => compareDays(left.on, right.on))[0];
   if (!first) throw invalid([{ path: 'days', message: 'Choose at least one morning.' }]);
   const siteId = orders[0]?.siteId ?? staff.siteId;
   const { site, protocol } = await searchFor(db, {
     siteId,
-    orders,
+    children: orders,
     from: first.on,
+    weeks: 1,
     count: days.length,
     now,
   });
@@ -131,6 +145,7 @@ export async function previewSeries(
         travelMinutes: order.travelMinutes,
         readyMinutes: order.readyMinutes,
         usualWaitMinutes: site.usualWaitMinutes,
+        usual: { lastMealTime: order.usualLastMealTime, nightFeedTimes: order.nightFeedTimes },
       });
       const line = {
         childId: order.childId,
@@ -141,6 +156,7 @@ export async function previewSeries(
         return {
           ...line,
           nothingAfter: words.text('clinic.preview.individual'),
+          fallsAway: null,
           longestFast: words.text('clinic.preview.individual'),
           individualPlanNeeded: individualPlanSays(words, plan.reasons),
         };
@@ -149,6 +165,7 @@ export async function previewSeries(
       return {
         ...line,
         nothingAfter: clockAndDay(toldStopAt),
+        fallsAway: fallsAwaySays(words, plan, clockTime),
         longestFast: words.text('clinic.preview.longest', {
           time: clockTime(longestAt),
           stop: clockTime(toldStopAt),
@@ -157,6 +174,16 @@ export async function previewSeries(
       };
     }),
   };
+}
+
+function fallsAwaySays(
+  words: ClinicWords,
+  { nightFeeds }: StandardPlan,
+  clockTime: (at: Instant) => string,
+): string | null {
+  const gone = nightFeeds.filter(({ fallsAway }) => fallsAway).map(({ at }) => clockTime(at));
+  if (gone.length === 0) return null;
+  return words.text('clinic.preview.falls-away', { count: gone.length, times: words.list(gone) });
 }
 
 export const individualPlanSays = (

@@ -18,6 +18,8 @@ export class Series extends Model<InferAttributes<Series>, InferCreationAttribut
   declare fastingProtocolId: number;
   declare laboratoryProfileId: number;
   declare morningsPlanned: number;
+  /** A ride has to be booked for each morning. */
+  declare needsRide: CreationOptional<boolean>;
   declare state: CreationOptional<'planned' | 'collecting' | 'awaiting-results' | 'closed'>;
   declare createdByStaffId: number;
   declare createdAt: Date;
@@ -37,7 +39,7 @@ export class Morning extends Model<InferAttributes<Morning>, InferCreationAttrib
   declare arrivalTime: string;
   declare arrivalAt: Date;
   declare roomId: number;
-  /** Unique while the morning holds its place; null once it is lost. */
+  /** Unique while the morning holds its place; null once it is lost. Its number is unique as long (`held_number`). */
   declare placeKey: string | null;
   declare state: CreationOptional<MorningState>;
   declare expectedAt: CreationOptional<Date | null>;
@@ -62,6 +64,7 @@ export function initSeriesModels(db: Sequelize): void {
       fastingProtocolId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
       laboratoryProfileId: { type: DataTypes.INTEGER.UNSIGNED, allowNull: false },
       morningsPlanned: { type: DataTypes.TINYINT.UNSIGNED, allowNull: false },
+      needsRide: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
       state: {
         type: DataTypes.ENUM('planned', 'collecting', 'awaiting-results', 'closed'),
         allowNull: false,

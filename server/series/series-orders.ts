@@ -1,22 +1,19 @@
 import type { Sequelize, Transaction } from 'sequelize';
 import type { Caution, Feeding } from '../../shared/contracts/common';
-import type { Day } from '../../shared/domain/day';
 import type { StaffMember } from '../auth/current-user';
 import { withinReach } from '../children/reach';
 import { select } from '../database/connection';
 import { invalid, notFound, Problem } from '../http/problem';
 import { stillNeeded } from '../orders/order-answer';
+import { localTimeOfColumn } from '../sites/sites';
 import { clinicWords, type ClinicWords } from '../wording/clinic-words';
+import type { SearchedChild } from './search';
 
 /** An order with what planning needs of its child. */
-export interface PlannableOrder {
+export interface PlannableOrder extends SearchedChild {
   readonly orderId: number;
-  readonly childId: number;
   readonly householdId: number;
   readonly siteId: number;
-  readonly fullName: string;
-  readonly callMe: string;
-  readonly bornOn: Day;
   readonly feeding: Feeding;
   readonly cautions: readonly Caution[];
   readonly morningsPlanned: number;
@@ -24,8 +21,10 @@ export interface PlannableOrder {
   readonly readyMinutes: number;
 }
 
-type OrderRow = Omit<PlannableOrder, 'cautions'> & {
+type OrderRow = Omit<PlannableOrder, 'cautions' | 'isReportOwed' | 'nightFeedTimes'> & {
   cautions: Caution[];
+  isReportOwed: 0 | 1;
+  nightFeedTimes: string[] | null;
   isSigned: 0 | 1;
   hasConsent: 0 | 1;
   seriesId: number | null;
@@ -56,6 +55,8 @@ export async function plannableOrders(
     `SELECT orders.id AS orderId, children.id AS childId, children.household_id AS householdId,
        households.site_id AS siteId, children.full_name AS fullName, children.call_me AS callMe,
        children.born_on AS bornOn, children.feeding, children.cautions,
+       children.usual_last_meal_time AS usualLastMealTime, children.night_feed_times AS nightFeedTimes,
+       orders.reporting_due_on IS NOT NULL AND orders.reported_at IS NULL AS isReportOwed,
        orders.mornings_planned AS morningsPlanned, households.travel_minutes AS travelMinutes,
        households.ready_minutes AS readyMinutes, orders.signed_at IS NOT NULL AS isSigned,
        EXISTS (SELECT 1 FROM procedure_consents consent WHERE consent.order_id = orders.id) AS hasConsent,
@@ -76,9 +77,23 @@ export async function plannableOrders(
   });
   refuseUnready(clinicWords(staff.language), orders);
   return orders.map(
-    ({ isSigned: _signed, hasConsent: _consent, seriesId: _series, ...order }) => order,
+    ({ isSigned: _signed, hasConsent: _consent, seriesId: _series, ...order }): PlannableOrder => ({
+      ...order,
+      ...searchedFacts(order),
+    }),
   );
 }
+
+/** Columns of a child and its order as a search wants them. */
+export const searchedFacts = (row: {
+  readonly usualLastMealTime: string | null;
+  readonly nightFeedTimes: readonly string[] | null;
+  readonly isReportOwed: 0 | 1;
+}): Pick<SearchedChild, 'usualLastMealTime' | 'nightFeedTimes' | 'isReportOwed'> => ({
+  usualLastMealTime: row.usualLastMealTime && localTimeOfColumn(row.usualLastMealTime),
+  nightFeedTimes: row.nightFeedTimes ?? [],
+  isReportOwed: row.isReportOwed === 1,
+});
 
 function refuseUnready(words: ClinicWords, orders: readonly OrderRow[]): void {
   const seriesIds = orders.flatMap(({ seriesId }) => (seriesId === null ? [] : [seriesId]));

@@ -10,19 +10,32 @@ import {
 import { right } from '../auth/right';
 import type { Context } from '../context';
 import { handle } from '../http/handle';
+import {
+  pauseMorningRequest,
+  replanPreviewRequest,
+  replanProposalRequest,
+  replanRequest,
+} from '../../shared/contracts/replan';
 import { closeSeries, loseMorning } from './lose-morning';
+import { pauseMorning } from './pause-morning';
 import { planSeries } from './plan-series';
 import { previewSeries, proposeSeries } from './proposals';
+import { previewReplan, replanSeries } from './replan';
+import { proposeReplan } from './replan-proposals';
 
 const morningInPath = z.object({ morningId: idInPath });
 const seriesInPath = z.object({ seriesId: idInPath });
-const previewRequest = planSeriesRequest.pick({ orderIds: true, days: true });
+const previewRequest = planSeriesRequest.pick({ orderIds: true, days: true, nights: true });
 
 /**
  * POST /series/proposals
  * POST /series/previews
  * POST /series
+ * POST /series/replan-proposals
+ * POST /series/replan-previews
+ * POST /series/replans
  * POST /mornings/:morningId/loss
+ * POST /mornings/:morningId/pause
  * POST /series/:seriesId/closure
  */
 export function seriesRoutes(context: Context): Router {
@@ -49,6 +62,27 @@ export function seriesRoutes(context: Context): Router {
     ),
   );
   router.post(
+    '/series/replan-proposals',
+    right('series.plan'),
+    handle({ body: replanProposalRequest }, ({ body, actor, staff }) =>
+      proposeReplan(context, actor, staff, body),
+    ),
+  );
+  router.post(
+    '/series/replan-previews',
+    right('series.plan'),
+    handle({ body: replanPreviewRequest }, ({ body, actor, staff }) =>
+      previewReplan(context, actor, staff, body),
+    ),
+  );
+  router.post(
+    '/series/replans',
+    right('series.plan'),
+    handle({ body: replanRequest }, ({ body, actor, staff }) =>
+      replanSeries(context, actor, staff, body),
+    ),
+  );
+  router.post(
     '/mornings/:morningId/loss',
     right('series.plan'),
     handle(
@@ -57,6 +91,13 @@ export function seriesRoutes(context: Context): Router {
         await loseMorning(context, actor, staff, params.morningId, body.reason);
         return { done: true };
       },
+    ),
+  );
+  router.post(
+    '/mornings/:morningId/pause',
+    right('series.plan'),
+    handle({ params: morningInPath, body: pauseMorningRequest }, ({ params, body, actor, staff }) =>
+      pauseMorning(context, actor, staff, params.morningId, body.reason),
     ),
   );
   router.post(

@@ -29,6 +29,9 @@ const longestShortName = 40;
 export const protocolBody = {
   usualWaitMinutes: startingProtocol.usualWaitMinutes,
   eatAgainAfterMinutes: startingProtocol.eatAgainAfterMinutes,
+  allowedItems: startingProtocol.allowedItems,
+  individualPlanCautions: startingProtocol.individualPlanCautions,
+  wakeToCollectionMinutes: startingProtocol.wakeToCollectionMinutes,
   bands: startingProtocol.bands,
 };
 
@@ -60,6 +63,16 @@ export async function insertFirstSite(
       },
     },
   );
+  await startSite(db, transaction, siteId);
+  return siteId;
+}
+
+/** What every new site starts with: one room, and the starting protocol, unsigned. */
+export async function startSite(
+  db: Sequelize,
+  transaction: Transaction,
+  siteId: number,
+): Promise<void> {
   // Curry International TB Center, step 1: a room is closed for an hour where its air changes are not known.
   await db.query(
     "INSERT INTO rooms (site_id, name, closure_minutes) VALUES (:siteId, 'Room 1', 60)",
@@ -78,5 +91,4 @@ export async function insertFirstSite(
       },
     },
   );
-  return siteId;
 }

@@ -58,3 +58,21 @@ export function reportingDueOn(
   }
   return day;
 }
+
+/**
+ * The number to call when a child is in danger, by country: what a new site starts with. From national numbering plans,
+ * written down from memory; whoever sets a site up looks at it.
+ */
+const emergencyNumbers: Readonly<Record<string, string>> = {
+  US: '911',
+  CA: '911',
+  MX: '911',
+  GB: '999',
+  AU: '000',
+  ZA: '112',
+  IN: '112',
+  BR: '192',
+};
+
+export const emergencyNumberOf = (country: string): string | null =>
+  emergencyNumbers[country] ?? null;

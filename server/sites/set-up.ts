@@ -1,43 +1,44 @@
-import type { SetUp } from '../../shared/contracts/set-up';
-import type { FastingBand } from '../../shared/domain/fasting-protocol';
+import type { PlacesOfCountry, SetUp } from '../../shared/contracts/set-up';
 import { dayOf } from '../../shared/domain/zone';
 import type { StaffMember } from '../auth/current-user';
 import type { Context } from '../context';
+import { ageOfBand } from '../protocols/band-words';
 import { profilesOfSite, protocolsOfSite, type StoredProfile } from '../protocols/protocols';
 import { hoursInWords } from '../wording/clinic-measures';
 import { clinicWords, type ClinicWords } from '../wording/clinic-words';
-import { closuresOf, roomsOf, siteOf } from './sites';
+import { countriesOf, regionsOf } from './public-holidays';
+import { emergencyNumberOf } from './rule-packs';
+import { calendarOf } from './site-calendar';
+import { allRoomsOf, siteOf, sitesOf } from './sites';
 
-/** Everything the clinic has set up for one site; whose values they are stands beside them. */
-export async function readSetUp({ db, clock }: Context, staff: StaffMember): Promise<SetUp> {
-  const site = await siteOf(db, staff.siteId);
+/**
+ * Everything the clinic has set up for one site, by default the own one; whose values they are stands beside them.
+ * @throws Problem 404
+ */
+export async function readSetUp(
+  { db, clock }: Context,
+  staff: StaffMember,
+  siteId = staff.siteId,
+): Promise<SetUp> {
+  const site = await siteOf(db, siteId);
   const words = clinicWords(staff.language);
-  const [rooms, closures, protocols, profiles] = await Promise.all([
-    roomsOf(db, site.id),
-    closuresOf(db, site.id, dayOf(clock.now(), site.zone)),
+  const today = dayOf(clock.now(), site.zone);
+  const [sites, rooms, calendar, protocols, profiles] = await Promise.all([
+    sitesOf(db),
+    allRoomsOf(db, site.id),
+    calendarOf(db, site, today, words),
     protocolsOfSite(db, site.id),
     profilesOfSite(db, site.id),
   ]);
+  const { clinicWeekdays, dawnLanguages, ...facts } = site;
   return {
-    site: {
-      id: site.id,
-      name: site.name,
-      shortName: site.shortName,
-      zone: site.zone,
-      address: site.address,
-      door: site.door,
-      phone: site.phone,
-      emergencyNumber: site.emergencyNumber,
-      dawnPhone: site.dawnPhone,
-      clinicWeekdays: [...site.clinicWeekdays],
-      arrivals: site.arrivals,
-      placesPerMorning: site.placesPerMorning,
-      eveningTextTime: site.eveningTextTime,
-      morningQuestionMinutesBefore: site.morningQuestionMinutesBefore,
-      callListMinutesBefore: site.callListMinutesBefore,
-    },
-    rooms,
-    closures: closures.map(({ on, reason }) => ({ on, reason })),
+    sites: sites.map(({ id, name }) => ({ id, name })),
+    site: { ...facts, clinicWeekdays: [...clinicWeekdays], dawnLanguages: [...dawnLanguages] },
+    rooms: rooms.map(({ air, ...room }) => ({
+      ...room,
+      closure: air ? { by: 'air', ...air } : { by: 'minutes', minutes: room.closureMinutes },
+    })),
+    ...calendar,
     protocols: protocols.map((protocol) => ({
       id: protocol.id,
       version: protocol.version,
@@ -66,25 +67,6 @@ export async function readSetUp({ db, clock }: Context, staff: StaffMember): Pro
 
 const instantOrNull = (at: number | null): string | null =>
   at === null ? null : new Date(at).toISOString();
-
-const yearsOrMonths = (words: ClinicWords, months: number): string =>
-  months >= 12 && months % 12 === 0
-    ? words.text('clinic.age.years', { count: months / 12 })
-    : words.text('clinic.age.months', { count: months });
-
-/** "under 3 months", "3 to 5 months", "1 year", "2 to 4 years", "5 years and over". */
-export function ageOfBand(words: ClinicWords, { fromMonths, toMonths }: FastingBand): string {
-  if (toMonths === null)
-    return words.text('clinic.band.and-over', { age: yearsOrMonths(words, fromMonths) });
-  const next = toMonths + 1;
-  if (fromMonths === 0) return words.text('clinic.band.under', { age: yearsOrMonths(words, next) });
-  if (fromMonths % 12 !== 0 || next % 12 !== 0 || toMonths < 12)
-    return words.text('clinic.band.months', { from: fromMonths, to: toMonths });
-  const years = { from: fromMonths / 12, to: next / 12 - 1 };
-  return years.from === years.to
-    ? yearsOrMonths(words, fromMonths)
-    : words.text('clinic.band.years', years);
-}
 
 const stages = [
   'smear',
@@ -124,4 +106,16 @@ function linesOf(words: ClinicWords, profile: StoredProfile): { says: string; va
     ),
     ...stages.map((stage) => line(stage, words.text('clinic.days', { count: resultDays[stage] }))),
   ];
+}
+
+/** What can be chosen for a site of this country. */
+export function placesOf(country: string, language: string): PlacesOfCountry {
+  const regions = Object.entries(regionsOf(country, language));
+  return {
+    countries: Object.keys(countriesOf()).sort(),
+    regions: regions
+      .map(([code, name]) => ({ code, name }))
+      .sort((left, right) => left.name.localeCompare(right.name, language)),
+    emergencyNumber: emergencyNumberOf(country),
+  };
 }

@@ -2,6 +2,7 @@ import type { Sequelize, Transaction } from 'sequelize';
 import { select } from '../database/connection';
 import { notFound } from '../http/problem';
 import type { Day, LocalTime, Weekday } from '../../shared/domain/day';
+import type { RoomAir } from '../../shared/domain/room-closure';
 import type { Closure } from '../../shared/domain/series-dates';
 
 /** A door of the organisation: its clock, hours, telephone and message times. */
@@ -21,6 +22,8 @@ export interface Site {
   readonly emergencyNumber: string;
   /** Between these times somebody answers before the clinic opens. */
   readonly dawnPhone: { readonly from: LocalTime; readonly until: LocalTime };
+  /** Languages that they speak. */
+  readonly dawnLanguages: readonly string[];
   readonly clinicWeekdays: readonly Weekday[];
   /** First and last arrival, inclusive. */
   readonly arrivals: { readonly from: LocalTime; readonly until: LocalTime };
@@ -29,17 +32,39 @@ export interface Site {
   readonly staffPairs: number;
   /** Days from today to the first morning at the least. */
   readonly leadDays: number;
+  /** Days from booking to the first morning where the family needs a ride. */
+  readonly rideLeadDays: number;
+  /** Days from the order to the first morning where the suspicion must be reported first. */
+  readonly reportingLeadDays: number;
+  /** Longest gap between two mornings of one series. */
+  readonly longestGapDays: number;
   /** From arrival to collection. */
   readonly usualWaitMinutes: number;
   readonly eveningTextTime: LocalTime;
   readonly morningQuestionMinutesBefore: number;
   readonly callListMinutesBefore: number;
+  /** The first word about a visit: so many days before, at this time. */
+  readonly aheadTextDays: number;
+  readonly aheadTextTime: LocalTime;
+  /** A second word to who has not answered, before the first arrival; 0 is none. */
+  readonly nudgeMinutesBefore: number;
+  /** Whether care texts may go to a number given without a recorded consent: one a day, three in a week. */
+  readonly textsWithoutConsent: boolean;
+  readonly version: number;
 }
 
 export interface SiteRoom {
   readonly id: number;
   readonly name: string;
   readonly closureMinutes: number;
+}
+
+/** A room as it is set up, also one that is not in use any more. */
+export interface RoomSetUp extends SiteRoom {
+  /** What the minutes were computed from; null where they were given. */
+  readonly air: RoomAir | null;
+  readonly isInUse: boolean;
+  readonly version: number;
 }
 
 interface SiteRow {
@@ -63,10 +88,19 @@ interface SiteRow {
   places_per_morning: number;
   staff_pairs: number;
   lead_days: number;
+  ride_lead_days: number;
+  reporting_lead_days: number;
+  longest_gap_days: number;
   usual_wait_minutes: number;
   evening_text_time: string;
   morning_question_minutes_before: number;
   call_list_minutes_before: number;
+  ahead_text_days: number;
+  ahead_text_time: string;
+  nudge_minutes_before: number;
+  texts_without_consent: 0 | 1;
+  dawn_languages: string[];
+  version: number;
 }
 
 /** 'HH:mm' of a TIME column, which comes as 'HH:mm:ss'. */
@@ -99,20 +133,49 @@ export async function sitesOf(
   return rows.map(siteFrom);
 }
 
+/** The rooms in use. */
 export async function roomsOf(
   db: Sequelize,
   siteId: number,
   transaction?: Transaction,
 ): Promise<SiteRoom[]> {
-  return select<SiteRoom>(
-    db,
-    'SELECT id, name, closure_minutes AS closureMinutes FROM rooms WHERE site_id = :siteId ORDER BY id',
-    { siteId },
-    transaction,
-  );
+  const rooms = await allRoomsOf(db, siteId, transaction);
+  return rooms
+    .filter(({ isInUse }) => isInUse)
+    .map(({ id, name, closureMinutes }) => ({ id, name, closureMinutes }));
 }
 
-/** Closed days from a day on, holidays included. */
+export async function allRoomsOf(
+  db: Sequelize,
+  siteId: number,
+  transaction?: Transaction,
+): Promise<RoomSetUp[]> {
+  const rows = await select<{
+    id: number;
+    name: string;
+    closure_minutes: number;
+    air_changes_per_hour: string | null;
+    cleared_percent: string | null;
+    is_in_use: 0 | 1;
+    version: number;
+  }>(db, 'SELECT * FROM rooms WHERE site_id = :siteId ORDER BY id', { siteId }, transaction);
+  return rows.map((row) => ({
+    id: row.id,
+    name: row.name,
+    closureMinutes: row.closure_minutes,
+    air:
+      row.air_changes_per_hour === null
+        ? null
+        : {
+            airChangesPerHour: Number(row.air_changes_per_hour),
+            clearedPercent: Number(row.cleared_percent) === 99 ? 99 : 99.9,
+          },
+    isInUse: row.is_in_use === 1,
+    version: row.version,
+  }));
+}
+
+/** The clinic's own closures from a day on; `closedDays` knows the holidays as well. */
 export async function closuresOf(
   db: Sequelize,
   siteId: number,
@@ -145,6 +208,7 @@ function siteFrom(row: SiteRow): Site {
       from: localTimeOfColumn(row.dawn_answers_from_time),
       until: localTimeOfColumn(row.dawn_answers_until_time),
     },
+    dawnLanguages: row.dawn_languages,
     clinicWeekdays: row.clinic_weekdays,
     arrivals: {
       from: localTimeOfColumn(row.arrivals_from_time),
@@ -154,9 +218,17 @@ function siteFrom(row: SiteRow): Site {
     placesPerMorning: row.places_per_morning,
     staffPairs: row.staff_pairs,
     leadDays: row.lead_days,
+    rideLeadDays: row.ride_lead_days,
+    reportingLeadDays: row.reporting_lead_days,
+    longestGapDays: row.longest_gap_days,
     usualWaitMinutes: row.usual_wait_minutes,
     eveningTextTime: localTimeOfColumn(row.evening_text_time),
     morningQuestionMinutesBefore: row.morning_question_minutes_before,
     callListMinutesBefore: row.call_list_minutes_before,
+    aheadTextDays: row.ahead_text_days,
+    aheadTextTime: localTimeOfColumn(row.ahead_text_time),
+    nudgeMinutesBefore: row.nudge_minutes_before,
+    textsWithoutConsent: row.texts_without_consent === 1,
+    version: row.version,
   };
 }

@@ -1,11 +1,23 @@
 import type { Sequelize, Transaction } from 'sequelize';
 import type { Result, Specimen } from '../../shared/contracts/specimens';
-import { dueOn, isOverdue, specimenClocks } from '../../shared/domain/specimen-clocks';
+import {
+  dueOn,
+  isOverdue,
+  resultStages,
+  specimenClocks,
+} from '../../shared/domain/specimen-clocks';
 import type { LaboratoryProfile } from '../../shared/domain/specimen-clocks';
 import { laboratoryCutOffAt } from '../../shared/domain/laboratory-day';
 import { dayOf } from '../../shared/domain/zone';
 import { select } from '../database/connection';
+import {
+  idInForce,
+  wholeProfileBody,
+  type ProfileBody,
+  type StoredProfileBody,
+} from '../protocols/protocols';
 import type { ClinicWords } from '../wording/clinic-words';
+import { clockExplained, dueDayExplained } from './explain-specimen';
 import { specimenSays } from './specimen-says';
 
 export interface SpecimenRow {
@@ -30,8 +42,21 @@ export interface SpecimenRow {
   readonly reject_reason: string | null;
   readonly zone: string;
   readonly site_id: number;
-  readonly profile: LaboratoryProfile;
+  /** In force on the day of the morning. */
+  readonly profile: ProfileBody & Pick<LaboratoryProfile, 'version' | 'name'>;
 }
+
+type FoundRow = Omit<SpecimenRow, 'profile'> & {
+  readonly profile_body: StoredProfileBody;
+  readonly profile_version: number;
+  readonly profile_name: string;
+};
+
+const profileId = idInForce('laboratory_profiles', {
+  siteId: 'series.site_id',
+  on: 'mornings.planned_on',
+  otherwise: 'series.laboratory_profile_id',
+});
 
 export interface SpecimenWhere {
   readonly siteId: number;
@@ -42,7 +67,7 @@ export interface SpecimenWhere {
 }
 
 /** Specimens of a site with what their clocks need, oldest first. */
-export function specimenRows(
+export async function specimenRows(
   db: Sequelize,
   where: SpecimenWhere,
   transaction?: Transaction,
@@ -51,24 +76,31 @@ export function specimenRows(
   if (where.id !== undefined) conditions.push('specimens.id = :id');
   if (where.seriesIds !== undefined) conditions.push('specimens.series_id IN (:seriesIds)');
   if (where.isOpenOnly) conditions.push("series.state <> 'closed'");
-  if (where.seriesIds?.length === 0) return Promise.resolve([]);
-  return select<SpecimenRow>(
+  if (where.seriesIds?.length === 0) return [];
+  const rows = await select<FoundRow>(
     db,
     `SELECT specimens.id, specimens.version, specimens.series_id, specimens.morning_id, specimens.child_id,
        children.full_name, children.born_on, specimens.number, series.mornings_planned, specimens.label,
        specimens.volume_ml, specimens.collected_at, specimens.neutralised_at, specimens.neutralised_with,
        specimens.handed_over_at, specimens.received_at, specimens.laboratory_number, specimens.rejected_at,
-       specimens.reject_reason, sites.zone, sites.id AS site_id, laboratory_profiles.body AS profile
+       specimens.reject_reason, sites.zone, sites.id AS site_id,
+       laboratory_profiles.body AS profile_body, laboratory_profiles.version AS profile_version,
+       laboratory_profiles.name AS profile_name
      FROM specimens
        JOIN series ON series.id = specimens.series_id
        JOIN children ON children.id = specimens.child_id
        JOIN sites ON sites.id = series.site_id
-       JOIN laboratory_profiles ON laboratory_profiles.id = series.laboratory_profile_id
+       JOIN mornings ON mornings.id = specimens.morning_id
+       JOIN laboratory_profiles ON laboratory_profiles.id = ${profileId}
      WHERE ${conditions.join(' AND ')}
      ORDER BY specimens.collected_at, specimens.id`,
     { ...where },
     transaction,
   );
+  return rows.map(({ profile_body, profile_version, profile_name, ...row }) => ({
+    ...row,
+    profile: { ...wholeProfileBody(profile_body), version: profile_version, name: profile_name },
+  }));
 }
 
 const iso = (date: Date | null): string | null => date?.toISOString() ?? null;
@@ -92,17 +124,15 @@ export function toSpecimen(
     cutOffAt,
     now,
   });
+  const explained = { ...profile, zone };
   const neutralise = clocks.find((clock) => clock.step === 'neutralise');
   const receipt = clocks.find((clock) => clock.step === 'receipt');
   const receiptBy = receipt?.dueAt ?? collectedAt;
   const neutraliseBy = neutralise?.dueAt ?? receiptBy;
+  const receivedOn = row.received_at ? dayOf(row.received_at.getTime(), zone) : null;
   const finalExpectedOn =
-    row.received_at && !row.rejected_at
-      ? dueOn({
-          profile,
-          receivedOn: dayOf(row.received_at.getTime(), zone),
-          stage: 'cultureNegativeFinal',
-        })
+    receivedOn !== null && !row.rejected_at
+      ? dueOn({ profile, receivedOn, stage: 'cultureNegativeFinal' })
       : null;
   const isFinal = (results ?? []).some(
     (result) => result.test === 'culture' && result.finality === 'final',
@@ -151,6 +181,12 @@ export function toSpecimen(
     isLate: clocks.some((clock) => clock.state === 'late' && row.received_at === null),
     finalExpectedOn,
     isOverdue: overdue,
+    explains: [
+      ...clocks.map((clock) => clockExplained(words, explained, clock)),
+      ...(receivedOn === null || row.rejected_at
+        ? []
+        : resultStages.map((stage) => dueDayExplained(words, explained, receivedOn, stage))),
+    ],
     results: results === null ? null : [...results],
   };
 }

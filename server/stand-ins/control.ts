@@ -15,6 +15,7 @@ export interface ControlParts {
 
 /**
  * GET  /state     texts, mails, numbers that opted out
+ * GET  /faults    how often each thing went wrong
  * PUT  /faults    what goes wrong next
  * POST /replies   a text from a family's phone; says whether the clinic took it
  *
@@ -27,6 +28,9 @@ export function controlOf({ store, faults, receiveFromPhone }: ControlParts): Ex
   app.use(onlyLoopback, express.json({ limit: '64kb' }));
   app.get('/state', (_req, res) => {
     res.json({ texts: store.texts, mails: store.mails, optedOut: [...store.optedOut] });
+  });
+  app.get('/faults', (_req, res) => {
+    res.json({ done: Object.fromEntries(faults.done) });
   });
   app.put('/faults', (req, res) => {
     const parsed = faultsRequest.safeParse(req.body);

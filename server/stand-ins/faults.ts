@@ -7,6 +7,7 @@ import { z } from 'zod';
  * - hold: takes nothing and never answers;
  * - accept-then-hold: takes the message and never answers;
  * - double-reports: every delivery report twice, the last one first;
+ * - late-reports: delivery reports only after `ms`;
  * - no-reports: no delivery report at all;
  * - report-failure: takes it and reports later that it did not arrive, with a code (30003 by default).
  */
@@ -18,6 +19,7 @@ export const fault = z.object({
     'hold',
     'accept-then-hold',
     'double-reports',
+    'late-reports',
     'no-reports',
     'report-failure',
   ]),
@@ -33,6 +35,8 @@ export type Fault = z.infer<typeof fault>;
 
 export class Faults {
   private waiting: Fault[] = [];
+  /** How often each thing was done wrong, by channel and name. */
+  readonly done = new Map<string, number>();
 
   set(faults: readonly Fault[]): void {
     this.waiting = faults.map((one) => ({ ...one }));
@@ -43,7 +47,10 @@ export class Faults {
     const found = this.waiting.find(
       (one) => one.channel === channel && one.times > 0 && (one.to === undefined || one.to === to),
     );
-    if (found) found.times -= 1;
+    if (!found) return undefined;
+    found.times -= 1;
+    const name = `${channel} ${found.does}`;
+    this.done.set(name, (this.done.get(name) ?? 0) + 1);
     return found;
   }
 }

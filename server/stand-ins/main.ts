@@ -32,6 +32,7 @@ async function main(): Promise<void> {
       return clock.now();
     },
     file: join(settings.dataDir, 'stand-ins.jsonl'),
+    reportPauseMs: settings.standInReportPauseMs,
   });
   let closing: Promise<void> | undefined;
   const close = () =>

@@ -116,6 +116,23 @@ describe('the text service', () => {
     }
   });
 
+  it('reports late when told so, and counts what it did wrong', async () => {
+    const control = (path: string, more: RequestInit = {}) =>
+      fetch(`${standIns.controlUrl}${path}`, {
+        ...more,
+        headers: { 'Content-Type': 'application/json' },
+      });
+    const late = { channel: 'sms', does: 'late-reports', ms: 150 };
+    await control('/faults', { method: 'PUT', body: JSON.stringify({ faults: [late] }) });
+    const sentAt = performance.now();
+    await text();
+    await untilPosts(2);
+    expect(performance.now() - sentAt).toBeGreaterThanOrEqual(150);
+    expect(posts.map(({ form }) => form['MessageStatus'])).toEqual(['sent', 'delivered']);
+    const told = await control('/faults');
+    expect(await told.json()).toEqual({ done: { 'sms late-reports': 1 } });
+  });
+
   it.each([
     ['a bad number', { To: '555' }, 400, 21211],
     ['another sender', { From: '+12065550101' }, 400, 21212],

@@ -1,3 +1,4 @@
+import { once } from 'node:events';
 import { getExpectedTwilioSignature } from 'twilio/lib/webhooks/webhooks';
 import type { Fault } from './faults';
 import type { StandInStore } from './store';
@@ -30,7 +31,9 @@ const startWords = new Set(['start', 'yes', 'unstop']);
 const goodbye = 'You will get no more texts from this number. Answer START to get them again.';
 const welcomeBack = 'You will get texts from this number again.';
 
-const tries = 3;
+/** A clinic that starts again is back within seconds; the real service can be told to repeat as often. */
+const tries = 6;
+const againAfterMs = 300;
 
 /** The service's calls to the clinic: delivery reports and texts from phones, each signed. */
 export function textReports(parts: TextReportParts): TextReports {
@@ -38,7 +41,10 @@ export function textReports(parts: TextReportParts): TextReports {
   const closing = new AbortController();
   const running = new Set<Promise<unknown>>();
 
-  const pause = () => new Promise((resolve) => setTimeout(resolve, pauseMs));
+  const pause = (ms = pauseMs) => {
+    const isOver = AbortSignal.any([closing.signal, AbortSignal.timeout(ms)]);
+    return isOver.aborted ? Promise.resolve() : once(isOver, 'abort');
+  };
 
   async function post(url: string, form: Readonly<Record<string, string>>): Promise<boolean> {
     if (!url.startsWith(`${parts.origin()}/`)) return false;
@@ -59,7 +65,7 @@ export function textReports(parts: TextReportParts): TextReports {
       } catch {
         // The clinic's web process may be starting again: another try follows.
       }
-      await pause();
+      await pause(attempt * againAfterMs);
     }
     return false;
   }
@@ -86,11 +92,15 @@ export function textReports(parts: TextReportParts): TextReports {
     const end = hasFailed ? 'undelivered' : 'delivered';
     await pause();
     store.setStatus(id, 'sent');
-    if (fault?.does !== 'no-reports' && fault?.does !== 'double-reports')
-      await reportStatus(id, 'sent', null);
+    const isInOrder = !['no-reports', 'double-reports', 'late-reports'].includes(fault?.does ?? '');
+    if (isInOrder) await reportStatus(id, 'sent', null);
     await pause();
     store.setStatus(id, end, code);
     if (fault?.does === 'no-reports') return;
+    if (fault?.does === 'late-reports') {
+      await pause(fault.ms);
+      await reportStatus(id, 'sent', null);
+    }
     await reportStatus(id, end, code);
     if (fault?.does !== 'double-reports') return;
     await reportStatus(id, end, code);

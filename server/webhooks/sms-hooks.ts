@@ -21,6 +21,10 @@ const incomingText = z.object({
   MessageSid: textId,
   From: z.string().min(1).max(20),
   Body: z.string().max(1600).default(''),
+  NumMedia: z
+    .string()
+    .regex(/^\d{1,2}$/)
+    .default('0'),
 });
 
 /**
@@ -52,6 +56,7 @@ export function smsHooks(context: Context): Router {
       providerId: text.MessageSid,
       from: text.From,
       body: text.Body,
+      pictures: Number(text.NumMedia),
       receivedAt: context.clock.now(),
     });
     // Whatever we answer goes through the outbox, never through the answer to this request.

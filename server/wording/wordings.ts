@@ -1,5 +1,6 @@
 import type { Sequelize } from 'sequelize';
 import type { WordingList } from '../../shared/contracts/messages';
+import { plainWords, readingEase } from '../../shared/domain/reading-ease';
 import { select } from '../database/connection';
 import { currentWordings } from './current-wording';
 import { sourceHash } from './shipped-words';
@@ -36,6 +37,7 @@ export async function listWordings(db: Sequelize): Promise<WordingList> {
         language: row.language,
         version: row.version,
         body: row.body,
+        readingEase: readingEase(row.language, plainWords(row.body)),
         isSignedOff: row.signed_at !== null && !isStale,
         isStale,
         signedBy: row.signed_by,

@@ -81,6 +81,8 @@ export const nextMorning = z.object({
   protocolSays: z.string(),
   /** Present while the wording is a draft that nobody has signed off. */
   draftSays: z.string().nullable(),
+  /** The label of the link to the questions about the plan; a page kept by an older application has none. */
+  sayItBack: z.string().nullable().optional(),
 });
 export type NextMorning = z.infer<typeof nextMorning>;
 

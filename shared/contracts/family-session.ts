@@ -1,7 +1,7 @@
 import * as z from 'zod';
 import { day, instant, languageId } from './common';
 
-const token = z.string().regex(/^[A-Za-z0-9_-]{20,64}$/);
+const token = z.string().regex(/^[A-Za-z0-9_-]{16,64}$/);
 
 /** What a link is for. Tells nothing about the child; asking does not use the link up. */
 export const describeLinkRequest = z.object({ token });

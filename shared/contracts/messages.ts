@@ -13,6 +13,10 @@ export const messageState = z.enum([
 export const messageItem = z.object({
   id,
   kind: z.string(),
+  kindSays: z.string(),
+  /** A child of the family, to open its record. */
+  childId: id.nullable(),
+  familyMemberId: id.nullable(),
   channel: z.enum(['sms', 'mail']),
   to: z.string(),
   address: z.string(),
@@ -25,17 +29,33 @@ export const messageItem = z.object({
   sentAt: instant.nullable(),
   deliveredAt: instant.nullable(),
   attempts: z.number().int(),
+  /** Parts that a text is paid for; null for an e-mail. */
   segments: z.number().int().nullable(),
+  /** When it was given up or reported as lost. */
+  failedAt: instant.nullable(),
+  /** It has failed and may still be sent. */
+  mayRetry: z.boolean(),
 });
 export type MessageItem = z.infer<typeof messageItem>;
+export const messageShows = ['all', 'waiting', 'sent', 'failed'] as const;
+export interface MessagesQuery {
+  readonly childId: number | null;
+  readonly show: (typeof messageShows)[number];
+  readonly channel: 'sms' | 'mail' | null;
+}
+export const outboxState = z.object({
+  waiting: z.number().int(),
+  oldestDueAt: instant.nullable(),
+  isStuck: z.boolean(),
+  failures: z.number().int(),
+  says: z.string(),
+});
+export type OutboxState = z.infer<typeof outboxState>;
 export const messageList = z.object({
   messages: z.array(messageItem),
-  health: z.object({
-    waiting: z.number().int(),
-    oldestDueAt: instant.nullable(),
-    isStuck: z.boolean(),
-    says: z.string(),
-  }),
+  /** How many there are; the latest are shown. */
+  total: z.number().int(),
+  health: outboxState,
 });
 export type MessageList = z.infer<typeof messageList>;
 export const wordingItem = z.object({
@@ -44,6 +64,8 @@ export const wordingItem = z.object({
   language: z.string(),
   version: z.number().int(),
   body: z.string(),
+  /** Grade for English, INFLESZ for Spanish; null where no published formula fits or there is nothing to score. */
+  readingEase: z.number().nullable(),
   isSignedOff: z.boolean(),
   isStale: z.boolean(),
   signedBy: z.string().nullable(),

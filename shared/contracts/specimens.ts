@@ -1,5 +1,6 @@
 import * as z from 'zod';
 import { day, id, instant, optionalText, shortText, version } from './common';
+import { explanation } from './explanation';
 
 export const testKind = z.enum(['smear', 'amplification', 'culture']);
 export type TestKind = z.infer<typeof testKind>;
@@ -56,6 +57,8 @@ export const specimen = z.object({
   isLate: z.boolean(),
   finalExpectedOn: day.nullable(),
   isOverdue: z.boolean(),
+  /** How each clock and each due day was reached. */
+  explains: z.array(explanation),
   /** Null where the reader may not see results. */
   results: z.array(result).nullable(),
 });

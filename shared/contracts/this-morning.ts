@@ -2,6 +2,7 @@ import * as z from 'zod';
 import {
   clockTime,
   day,
+  feeding,
   id,
   instant,
   morningState,
@@ -9,6 +10,7 @@ import {
   shortText,
   verdict,
 } from './common';
+import { explanation } from './explanation';
 
 /** The hours-fasted bar of one child: instants on one ruler. */
 export const fastingBar = z.object({
@@ -28,6 +30,7 @@ export const morningRow = z.object({
   childId: id,
   fullName: z.string(),
   ageInWords: z.string(),
+  feeding,
   number: z.number().int(),
   ofPlanned: z.number().int(),
   /** States of all mornings of the series in order, for the suns. */
@@ -63,6 +66,8 @@ export const morningRow = z.object({
   readyAt: instant.nullable(),
   ceiling: z.enum(['ok', 'collect-or-feed', 'feed']),
   bar: fastingBar.nullable(),
+  /** How plan, fast and verdict were reached, each as data and as a line for staff. */
+  explains: z.array(explanation),
   doorCheck: z.object({ at: instant, by: z.string(), says: z.string(), verdict }).nullable(),
   collection: z
     .object({
@@ -98,7 +103,9 @@ export const thisMorning = z.object({
   now: instant,
   /** 'Five children: one collected, two here, ...' */
   summary: z.string(),
-  suggestion: z.object({ morningId: id, roomId: id, says: z.string() }).nullable(),
+  suggestion: z
+    .object({ morningId: id, roomId: id, says: z.string(), explains: explanation })
+    .nullable(),
   rooms: z.array(z.object({ id, name: z.string(), opensAt: instant.nullable(), says: z.string() })),
   rows: z.array(morningRow),
   /** Days that have mornings around this one, for going back and forth. */
@@ -111,19 +118,38 @@ export type ThisMorning = z.infer<typeof thisMorning>;
 export const arriveRequest = z.object({ version: z.number().int() });
 export const doorCheckRequest = z.object({
   version: z.number().int(),
+  /** Food, milk or a feed: hunger counts from here. */
   lastFoodAt: instant.nullable(),
+  foodItem: z
+    .enum(['solid-food', 'cows-milk', 'formula', 'breast-milk', 'tube-feed'])
+    .nullable()
+    .default(null),
+  /** Water, or a drink that is no meal: it starts the least hours again, never the longest fast. */
   lastDrinkAt: instant.nullable(),
+  drinkItem: z.enum(['water', 'other']).nullable().default(null),
   isNothingSincePlan: z.boolean(),
   medicine: optionalText(200),
   wokeAt: instant.nullable(),
   isWell: z.boolean(),
+  bloodGlucoseMgDl: z
+    .number()
+    .int('Between 10 and 1000 mg/dL.')
+    .min(10, 'Between 10 and 1000 mg/dL.')
+    .max(1000, 'Between 10 and 1000 mg/dL.')
+    .nullable()
+    .default(null),
   broughtBy: shortText(160),
   /** A clinician's reason to go on although the fast is not long enough, or too long. */
   goOnReason: optionalText(300),
 });
 export type DoorCheckRequest = z.input<typeof doorCheckRequest>;
-export const beginCollectionRequest = z.object({ version: z.number().int(), roomId: id });
-export type BeginCollectionRequest = z.infer<typeof beginCollectionRequest>;
+export const beginCollectionRequest = z.object({
+  version: z.number().int(),
+  roomId: id,
+  /** A clinician's reason to go on although the longest fast has passed. */
+  ceilingReason: optionalText(300),
+});
+export type BeginCollectionRequest = z.input<typeof beginCollectionRequest>;
 
 export const endCollectionRequest = z.discriminatedUnion('outcome', [
   z.object({

@@ -3,114 +3,68 @@
  * The check never cancels a morning; a nurse or clinician decides every doubtful case. Free of
  * zones and libraries: wall-clock answers arrive as instants, doubtful ones with both readings.
  */
-import type { Item } from './fasting-protocol';
-import type { FastingPlan, StandardPlan } from './fasting-plan';
+import type { Explanation } from './explanation';
+import { leastMinutesOf } from './fasting-hours';
+import type {
+  ExplainKey,
+  FastedMinutes,
+  FastingAnswer,
+  FastingCheck,
+  FastingCheckRequest,
+  FastingCheckResult,
+  FastingCheckError,
+} from './fasting-answer';
+import type { StandardPlan } from './fasting-plan';
 import { millisecondsPerMinute, type Instant } from './day';
 
-export type FastingAnswerKind = 'nothing' | 'sip' | 'feed' | 'unsure';
+export type * from './fasting-answer';
 
-export interface FastingAnswer {
-  readonly kind: FastingAnswerKind;
-  /** What was last taken, where the family said so; the strictest hours count otherwise. */
-  readonly item?: Item;
-  readonly lastIntakeAt?: Instant;
-  /** Both readings of a wall-clock time that occurred twice or never. */
-  readonly readings?: { readonly earlier: Instant; readonly later: Instant };
-}
-
-export interface DawnPhone {
-  readonly answersFrom: Instant;
-  readonly answersUntil: Instant;
-}
-
-export interface FastingCheckRequest {
-  readonly answer: FastingAnswer;
-  readonly plan: FastingPlan;
-  readonly now: Instant;
-  readonly arrivalAt: Instant;
-  readonly likelyCollectionAt: Instant;
-  readonly dawnPhone: DawnPhone | null;
-  /** When the clinic promises to call back; by default when its telephone opens, if still ahead. */
-  readonly weCallBy?: Instant | null;
-  readonly lastRoomStartAt: Instant | null;
-  readonly laboratoryCutOffAt: Instant | null;
-}
-
-export type FastingVerdict = 'long-enough' | 'not-long-enough' | 'cannot-tell';
-
-export type FastingOutcome =
-  | 'come'
-  | 'come-and-wait'
-  | 'call-us'
-  | 'come-nurse-decides'
-  | 'stay-we-call'
-  | 'feed-now-and-call';
-
-export type ExplainKey =
-  | 'nothing-since-the-stop'
-  | 'long-enough-at-arrival'
-  | 'ready-after-arrival'
-  | 'time-not-known'
-  | 'not-sure'
-  | 'a-sip'
-  | 'clock-change-two-readings'
-  | 'longest-fast-would-pass'
-  | 'after-last-room-start'
-  | 'after-laboratory-cut-off'
-  | 'individual-plan'
-  | 'nobody-answers-the-phone';
-
-export interface FastedMinutes {
-  readonly now: number;
-  readonly atArrival: number;
-  readonly atCollection: number;
-}
-
-export interface FastingCheck {
-  readonly ok: true;
-  readonly verdict: FastingVerdict;
-  /** When the least hours are over, by the later reading; null when the time is not known. */
-  readonly readyAt: Instant | null;
-  /** By the later reading. */
-  readonly fastedMinutes: FastedMinutes | null;
-  readonly outcome: FastingOutcome;
-  /** Set with come-and-wait. */
-  readonly waitUntil: Instant | null;
-  /** Set with stay-we-call, and with feed-now-and-call while nobody answers yet. */
-  readonly weCallBy: Instant | null;
-  readonly phoneAnswers: boolean;
-  readonly explain: readonly ExplainKey[];
-}
-
-export type FastingCheckError = 'intake-in-the-future' | 'intake-too-long-ago';
-export type FastingCheckResult =
-  FastingCheck | { readonly ok: false; readonly error: FastingCheckError };
+/** A check before it can say how it was reached. */
+type Checked = Omit<FastingCheck, 'explanation'>;
 
 /** An answer about the night before; anything older is a slip of the finger. */
 const oldestIntakeMinutes = 24 * 60;
-const collectBeforeCeilingMinutes = 30;
 
 type Reading = { readonly earlier: Instant; readonly later: Instant };
 
 export function fastingCheck(request: FastingCheckRequest): FastingCheckResult {
-  const { answer, plan, now } = request;
-  const reading = readingOf(answer, now);
+  const reading = readingOf(request.answer, request.now);
   if (reading === 'intake-in-the-future' || reading === 'intake-too-long-ago') {
     return { ok: false, error: reading };
   }
+  const check = checked(request, reading);
+  return { ...check, explanation: explanationOf(request, check, reading) };
+}
+
+function checked(request: FastingCheckRequest, reading: Reading | null): Checked {
+  const { answer, plan } = request;
   if (plan.kind === 'individual') {
     const fasted = reading ? fastedMinutes(request, reading.later) : null;
     return doubtful(request, ['individual-plan'], { readyAt: null, fastedMinutes: fasted });
   }
-  if (reading) return checkedByTime(request, plan, reading);
-  if (answer.kind === 'nothing') {
-    // The family says that all went as planned: the fast then began at the latest at the stop.
-    const asPlanned = { earlier: plan.stopAt, later: plan.stopAt };
-    const check = checkedByTime(request, plan, asPlanned);
-    return { ...check, explain: ['nothing-since-the-stop', ...check.explain] };
+  // "Nothing" beside a time after the stop: only one of the two can be meant, and nobody knows which.
+  if (answer.kind === 'nothing' && reading && reading.later > plan.nothingAt) {
+    const fasted = fastedMinutes(request, reading.later);
+    return doubtful(request, ['contradictory'], { readyAt: null, fastedMinutes: fasted });
   }
+  if (reading) return checkedByTime(request, plan, reading);
+  if (answer.kind === 'nothing') return asPlanned(request, plan);
   const why: ExplainKey[] = answer.kind === 'unsure' ? ['not-sure'] : ['time-not-known'];
   return doubtful(request, why, { readyAt: null, fastedMinutes: null });
+}
+
+/** The family says that all went by the plan: each thing was last taken at its stop at the latest. */
+function asPlanned(request: FastingCheckRequest, plan: StandardPlan): Checked {
+  const readyAt = Math.max(
+    ...plan.stops.map((stop) => stop.stopAt + stop.leastMinutes * millisecondsPerMinute),
+  );
+  const ceilingAt = plan.mealStopAt + plan.longestMinutes * millisecondsPerMinute;
+  const found = {
+    verdict: readyAt <= request.arrivalAt ? ('long-enough' as const) : ('not-long-enough' as const),
+    readyAt,
+    fastedMinutes: fastedMinutes(request, plan.mealStopAt),
+  };
+  return settled(request, { ...found, ceilingAt, why: ['nothing-since-the-stop'] });
 }
 
 function readingOf(answer: FastingAnswer, now: Instant): Reading | FastingCheckError | null {
@@ -130,46 +84,66 @@ function checkedByTime(
   request: FastingCheckRequest,
   plan: StandardPlan,
   reading: Reading,
-): FastingCheck {
-  const { answer, arrivalAt, likelyCollectionAt } = request;
-  const least = leastMinutesFor(plan, answer.item) * millisecondsPerMinute;
-  const ceilingAt = reading.earlier + plan.longestMinutes * millisecondsPerMinute;
-  const readyAt = reading.later + least;
-  const enoughByLater = readyAt <= arrivalAt;
-  const enoughByEarlier = reading.earlier + least <= arrivalAt;
-  const explain: ExplainKey[] = answer.kind === 'sip' ? ['a-sip'] : [];
-  const common = { readyAt, fastedMinutes: fastedMinutes(request, reading.later) };
-  const differ = enoughByLater !== enoughByEarlier;
-  const verdict =
-    differ || answer.kind === 'unsure'
-      ? 'cannot-tell'
-      : enoughByLater
-        ? 'long-enough'
-        : 'not-long-enough';
+): Checked {
+  const { answer, arrivalAt } = request;
+  const { strictest, mildest } = leastMinutesOf(plan, answer.kind, answer.item);
+  const readyAt = reading.later + strictest * millisecondsPerMinute;
+  // The least hours by the later reading, the longest fast by the earlier. A sip of water ends no
+  // hunger: the ceiling goes on from the last meal.
+  const hungryFrom =
+    answer.kind === 'sip'
+      ? Math.min(answer.lastMealAt ?? plan.mealStopAt, reading.earlier)
+      : reading.earlier;
+  const isEnough = readyAt <= arrivalAt;
+  const differs = isEnough !== reading.earlier + strictest * millisecondsPerMinute <= arrivalAt;
+  const dependsOnItem =
+    !isEnough && reading.later + mildest * millisecondsPerMinute <= arrivalAt && !differs;
+  const isUnclear = differs || dependsOnItem || answer.kind === 'unsure';
+  return settled(request, {
+    verdict: isUnclear ? 'cannot-tell' : isEnough ? 'long-enough' : 'not-long-enough',
+    readyAt,
+    fastedMinutes: fastedMinutes(request, reading.later),
+    ceilingAt: hungryFrom + plan.longestMinutes * millisecondsPerMinute,
+    why: answer.kind === 'sip' ? ['a-sip'] : [],
+    unclear: differs ? 'clock-change-two-readings' : dependsOnItem ? 'item-not-known' : 'not-sure',
+  });
+}
 
+interface Found extends Pick<Checked, 'verdict' | 'fastedMinutes'> {
+  readonly readyAt: Instant;
+  readonly ceilingAt: Instant;
+  readonly why: readonly ExplainKey[];
+  readonly unclear?: ExplainKey;
+}
+
+/** From verdict and ceiling to what the family is told: hunger first, then doubt, then the wait. */
+function settled(request: FastingCheckRequest, found: Found): Checked {
+  const { verdict, readyAt, ceilingAt, why } = found;
+  const common = { readyAt, fastedMinutes: found.fastedMinutes };
+  const isEnough = readyAt <= request.arrivalAt;
   // A child who ate too recently waits until ready; only then can it be collected.
-  const collectionAt = Math.max(likelyCollectionAt, enoughByLater ? 0 : readyAt);
+  const collectionAt = Math.max(request.likelyCollectionAt, isEnough ? 0 : readyAt);
   if (ceilingAt < collectionAt) {
-    const why: ExplainKey[] = [...explain, 'longest-fast-would-pass'];
-    return told(request, { verdict, ...common, outcome: 'feed-now-and-call', explain: why });
+    const explain: ExplainKey[] = [...why, 'longest-fast-would-pass'];
+    return told(request, { verdict, ...common, outcome: 'feed-now-and-call', explain });
   }
   if (verdict === 'cannot-tell') {
-    return doubtful(request, [differ ? 'clock-change-two-readings' : 'not-sure'], common);
+    return doubtful(request, [...why, found.unclear ?? 'not-sure'], common);
   }
   if (verdict === 'long-enough') {
-    const why: ExplainKey[] = [...explain, 'long-enough-at-arrival'];
-    return told(request, { verdict, ...common, outcome: 'come', explain: why });
+    const explain: ExplainKey[] = [...why, 'long-enough-at-arrival'];
+    return told(request, { verdict, ...common, outcome: 'come', explain });
   }
-  return notLongEnough(request, readyAt, ceilingAt, explain, common);
+  return notLongEnough(request, readyAt, ceilingAt, why, common);
 }
 
 function notLongEnough(
   request: FastingCheckRequest,
   readyAt: Instant,
   ceilingAt: Instant,
-  explain: ExplainKey[],
-  common: Pick<FastingCheck, 'readyAt' | 'fastedMinutes'>,
-): FastingCheck {
+  explain: readonly ExplainKey[],
+  common: Pick<Checked, 'readyAt' | 'fastedMinutes'>,
+): Checked {
   const { answer, lastRoomStartAt, laboratoryCutOffAt } = request;
   const obstacles: ExplainKey[] = [];
   if (lastRoomStartAt !== null && readyAt > lastRoomStartAt) {
@@ -192,8 +166,8 @@ function notLongEnough(
 function doubtful(
   request: FastingCheckRequest,
   why: readonly ExplainKey[],
-  { readyAt, fastedMinutes }: Pick<FastingCheck, 'readyAt' | 'fastedMinutes'>,
-): FastingCheck {
+  { readyAt, fastedMinutes }: Pick<Checked, 'readyAt' | 'fastedMinutes'>,
+): Checked {
   const phoneAnswers = doesPhoneAnswer(request);
   const canPromise = request.answer.kind === 'feed' && promisedCall(request) !== null;
   const outcome = phoneAnswers ? 'call-us' : canPromise ? 'stay-we-call' : 'come-nurse-decides';
@@ -203,8 +177,8 @@ function doubtful(
 
 function told(
   request: FastingCheckRequest,
-  check: Pick<FastingCheck, 'verdict' | 'readyAt' | 'fastedMinutes' | 'outcome' | 'explain'>,
-): FastingCheck {
+  check: Pick<Checked, 'verdict' | 'readyAt' | 'fastedMinutes' | 'outcome' | 'explain'>,
+): Checked {
   const phoneAnswers = doesPhoneAnswer(request);
   const { outcome } = check;
   const waitsForCall =
@@ -228,10 +202,6 @@ function promisedCall({ weCallBy, dawnPhone, now }: FastingCheckRequest): Instan
   return promised !== null && promised > now ? promised : null;
 }
 
-function leastMinutesFor(plan: StandardPlan, item: Item | undefined): number {
-  return plan.stops.find((stop) => stop.item === item)?.leastMinutes ?? plan.leastMinutes;
-}
-
 function fastedMinutes(request: FastingCheckRequest, lastIntakeAt: Instant): FastedMinutes {
   // "Nothing" told before the stop counts from a stop still to come: none yet, not less than none.
   const since = (instant: Instant): number =>
@@ -243,19 +213,28 @@ function fastedMinutes(request: FastingCheckRequest, lastIntakeAt: Instant): Fas
   };
 }
 
-export type HungerCeiling = 'ok' | 'collect-or-feed' | 'feed';
-
-/**
- * What the row of a child offers. From half an hour before the longest fast: collect now or feed;
- * at the ceiling: feed. Give the earlier reading of a doubtful time.
- */
-export function hungerCeiling(request: {
-  readonly lastIntakeAt: Instant;
-  readonly longestMinutes: number;
-  readonly now: Instant;
-}): HungerCeiling {
-  const { lastIntakeAt, longestMinutes, now } = request;
-  const minutesLeft = longestMinutes - (now - lastIntakeAt) / millisecondsPerMinute;
-  if (minutesLeft <= 0) return 'feed';
-  return minutesLeft <= collectBeforeCeilingMinutes ? 'collect-or-feed' : 'ok';
+/** What went in and which rule decided, for staff and for the record. */
+function explanationOf(
+  { answer, plan, now, arrivalAt, likelyCollectionAt }: FastingCheckRequest,
+  check: Checked,
+  reading: Reading | null,
+): Explanation {
+  const standard = plan.kind === 'standard' ? plan : null;
+  return {
+    rule: `fasting-check.${check.explain[check.explain.length - 1] ?? check.verdict}`,
+    inputs: {
+      answer: answer.kind,
+      item: answer.item ?? null,
+      lastIntakeAt: reading?.later ?? null,
+      earlierReadingAt: reading && reading.earlier !== reading.later ? reading.earlier : null,
+      now,
+      arrivalAt,
+      likelyCollectionAt,
+      readyAt: check.readyAt,
+      leastMinutes: standard?.leastMinutes ?? null,
+      longestMinutes: standard?.longestMinutes ?? null,
+      basis: standard?.basis ?? null,
+      reached: check.explain.join(', '),
+    },
+  };
 }

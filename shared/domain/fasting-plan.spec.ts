@@ -1,6 +1,5 @@
 import {
   cautions,
-  composedPlan,
   fastingPlan,
   longestEndsAt,
   wallClockForFamily,
@@ -162,7 +161,25 @@ describe('the plan of a child', () => {
       reason: caution,
       reasons: [caution],
       ageMonths: 43,
+      explanation: {
+        rule: 'fasting-plan.individual-plan-missing',
+        inputs: {
+          ageMonths: 43,
+          reasons: caution,
+          arrivalAt: instantOf({ on: '2026-12-09', time: '07:00', zone }),
+          protocolVersion: 1,
+        },
+      },
     });
+  });
+
+  it('with a condition that this clinic’s protocol does not hold back goes as any other', () => {
+    const protocol = { ...startingProtocol, individualPlanCautions: ['diabetes'] as const };
+    const asked = (caution: 'tube-feeding' | 'diabetes') =>
+      fastingPlan(request('2026-12-09', '07:00', '2023-05-05', { protocol, cautions: [caution] }));
+    const plan = asked('tube-feeding');
+    expect(plan.kind === 'standard' && plan.stops.map(({ item }) => item)).toContain('tube-feed');
+    expect(asked('diabetes')).toMatchObject({ kind: 'individual', reason: 'diabetes' });
   });
 
   it('names every reason, the age first', () => {
@@ -194,33 +211,5 @@ describe('the plan of a child', () => {
     // 4 h and a wait of 2 h 1 min pass the 6 h of a child of 5 months.
     expect(older(startingProtocol.bands, 121)).toMatchObject({ reason: 'fast-too-long' });
     expect(older(startingProtocol.bands, 120).kind).toBe('standard');
-  });
-
-  it('composed by a clinician goes as any other', () => {
-    const plan = composedPlan({
-      arrivalAt: instantOf({ on: '2026-12-09', time: '06:00', zone }),
-      ageMonths: 2,
-      feeding: 'breast',
-      leastMinutes: { 'breast-milk': 180, water: 180 },
-      longestMinutes: 300,
-      travelMinutes: 20,
-      readyMinutes: 20,
-      usualWaitMinutes: 15,
-      eatAgainAfterMinutes: 10,
-      protocolVersion: 3,
-    });
-    expect(plan).toMatchObject({ kind: 'standard', basis: 'individual', leastMinutes: 180 });
-    expect(local(plan.stopAt)).toBe('2026-12-09 03:00');
-    expect(() =>
-      composedPlan({
-        ...request('2026-12-09', '06:00', '2026-11-01'),
-        ageMonths: 2,
-        leastMinutes: {},
-        longestMinutes: 300,
-        usualWaitMinutes: 15,
-        eatAgainAfterMinutes: 10,
-        protocolVersion: 3,
-      }),
-    ).toThrow('at least one item');
   });
 });

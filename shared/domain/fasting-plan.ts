@@ -3,23 +3,25 @@
  * thing may last be taken, when to wake, leave and arrive, and when the child eats again. Hours
  * are elapsed hours; on the night a clock changes the wall clock shows another difference.
  */
-import { items, bandFor, type FastingProtocol, type Item } from './fasting-protocol';
+import type { Caution } from './cautions';
+import type { LocalTime } from './day';
+import type { Explanation } from './explanation';
+import {
+  items,
+  bandFor,
+  type FastingBand,
+  type FastingProtocol,
+  type Item,
+} from './fasting-protocol';
+import { nightOfPlan, type NightOfPlan, type UsualNight } from './usual-night';
+import { isMeal } from './intake';
+import { lastBefore, stopsOf, type FastingStop, type StopRule } from './fasting-stops';
 import { ageOn, dayOf, localPartsOf, millisecondsPerMinute, type Day, type Instant } from './zone';
 
 export const feedings = ['breast', 'formula', 'breast-and-formula', 'family-food'] as const;
 export type Feeding = (typeof feedings)[number];
 
-/** Circumstances in which a clinician composes the plan (clinical facts 1.4; product rules). */
-export const cautions = [
-  'diabetes',
-  'metabolic-disease',
-  'low-blood-sugar',
-  'severe-malnutrition',
-  'prematurity',
-  'tube-feeding',
-  'morning-medicine',
-] as const;
-export type Caution = (typeof cautions)[number];
+export { cautions, type Caution } from './cautions';
 
 export type IndividualReason =
   | Caution
@@ -30,13 +32,10 @@ export type IndividualReason =
   /** The least hours and the usual wait together pass the longest fast. */
   | 'fast-too-long';
 
-export interface FastingStop {
-  readonly item: Item;
-  readonly stopAt: Instant;
-  readonly leastMinutes: number;
-}
+export type { FastingStop } from './fasting-stops';
+export type { UsualNight } from './usual-night';
 
-export interface StandardPlan {
+export interface StandardPlan extends NightOfPlan {
   readonly kind: 'standard';
   /** Where the hours come from: the signed protocol, or a clinician's plan for this child. */
   readonly basis: 'protocol' | 'individual';
@@ -45,13 +44,17 @@ export interface StandardPlan {
   /** Under 12 months: the last feed is planned to the minute. */
   readonly isInfant: boolean;
   readonly stops: readonly FastingStop[];
-  /** The earliest of the stops: nothing at all from here on. */
+  /** The earliest of the stops. */
   readonly stopAt: Instant;
+  /** The last of the stops: nothing at all from here on. */
+  readonly nothingAt: Instant;
+  /** When the last meal or feed of this child's kind is finished: hunger counts from here. */
+  readonly mealStopAt: Instant;
   readonly allSame: boolean;
   /** Of the strictest thing. */
   readonly leastMinutes: number;
   readonly longestMinutes: number;
-  /** The last moment at which a meal or feed may be finished; equals stopAt. */
+  /** The last moment at which a meal or feed may be finished; equals mealStopAt. */
   readonly latestIntakeAt: Instant;
   /** With a last meal before this the longest fast would end before the child eats again. */
   readonly earliestLastMealAt: Instant;
@@ -64,6 +67,7 @@ export interface StandardPlan {
   readonly arriveAt: Instant;
   readonly likelyCollectionAt: Instant;
   readonly eatAgainAt: Instant;
+  readonly explanation: Explanation;
 }
 
 export interface IndividualPlan {
@@ -71,6 +75,7 @@ export interface IndividualPlan {
   readonly reason: IndividualReason;
   readonly reasons: readonly IndividualReason[];
   readonly ageMonths: number;
+  readonly explanation: Explanation;
 }
 
 export type FastingPlan = StandardPlan | IndividualPlan;
@@ -89,20 +94,27 @@ export interface FastingPlanRequest {
   readonly usualWaitMinutes?: number;
   /** The child's usual bedtime that evening, for the reminder. */
   readonly bedtimeAt?: Instant;
+  readonly usual?: UsualNight;
 }
 
 export interface ComposedPlanRequest {
   readonly arrivalAt: Instant;
+  readonly zone: string;
   readonly ageMonths: number;
   readonly feeding: Feeding;
-  readonly leastMinutes: Readonly<Partial<Record<Item, number>>>;
+  readonly rules: Readonly<Partial<Record<Item, StopRule>>>;
   readonly longestMinutes: number;
   readonly travelMinutes: number;
   readonly readyMinutes: number;
   readonly usualWaitMinutes: number;
   readonly eatAgainAfterMinutes: number;
   readonly protocolVersion: number;
+  /** Of the clinician's plan; null when the hours are the protocol's. */
+  readonly individualVersion: number | null;
+  /** When the last feed begins, where the clinician set it. */
+  readonly lastFeedTime?: LocalTime | null;
   readonly bedtimeAt?: Instant;
+  readonly usual?: UsualNight;
 }
 
 /** An infant's reminder leaves time for a whole feed; others are told before they go to bed. */
@@ -117,26 +129,39 @@ export function fastingPlan(request: FastingPlanRequest): FastingPlan {
   const reasons: IndividualReason[] = [];
   if (ageMonths < 3) reasons.push('under-3-months');
   else if (band?.individualPlan) reasons.push('age-band');
-  reasons.push(...request.cautions);
+  const held = request.cautions.filter((one) => protocol.individualPlanCautions.includes(one));
+  reasons.push(...held);
   if (!band) reasons.push('not-in-protocol');
   if (band?.leastHours && band.longestHours !== null) {
-    const leastMinutes = minutesByItem(band.leastHours);
-    const strictest = Math.max(...Object.values(leastMinutes));
-    if (strictest + usualWaitMinutes > band.longestHours * 60) reasons.push('fast-too-long');
-    if (reasons.length === 0) {
-      return standardPlan('protocol', {
-        ...request,
-        ageMonths,
-        leastMinutes,
-        longestMinutes: band.longestHours * 60,
-        usualWaitMinutes,
-        eatAgainAfterMinutes: protocol.eatAgainAfterMinutes,
-        protocolVersion: protocol.version,
-      });
-    }
+    const plan = standardPlan('protocol', {
+      ...request,
+      ageMonths,
+      rules: rulesOf(band.leastHours, band.nothingFrom, request.cautions),
+      longestMinutes: band.longestHours * 60,
+      usualWaitMinutes,
+      eatAgainAfterMinutes: protocol.eatAgainAfterMinutes,
+      protocolVersion: protocol.version,
+      individualVersion: null,
+    });
+    if (plan.earliestLastMealAt > plan.mealStopAt) reasons.push('fast-too-long');
+    if (reasons.length === 0) return plan;
   }
   const reason = reasons[0] ?? 'not-in-protocol';
-  return { kind: 'individual', reason, reasons: reasons.length ? reasons : [reason], ageMonths };
+  return {
+    kind: 'individual',
+    reason,
+    reasons: reasons.length ? reasons : [reason],
+    ageMonths,
+    explanation: {
+      rule: 'fasting-plan.individual-plan-missing',
+      inputs: {
+        ageMonths,
+        reasons: reasons.join(', ') || reason,
+        arrivalAt,
+        protocolVersion: protocol.version,
+      },
+    },
+  };
 }
 
 /** The plan a clinician composed for one child; messages then go as for everybody else. */
@@ -144,29 +169,54 @@ export function composedPlan(request: ComposedPlanRequest): StandardPlan {
   return standardPlan('individual', request);
 }
 
-/** Children on tube feeds have an individual plan, so that no standard plan names them. */
-function minutesByItem(hours: Readonly<Record<Item, number>>): Partial<Record<Item, number>> {
+/** Tube feeds have hours in every protocol; only the plan of a child that is fed by tube names them. */
+function rulesOf(
+  hours: NonNullable<FastingBand['leastHours']>,
+  nothingFrom: LocalTime | null | undefined,
+  cautions: readonly Caution[],
+): Partial<Record<Item, StopRule>> {
   return Object.fromEntries(
-    items.filter((item) => item !== 'tube-feed').map((item) => [item, hours[item] * 60]),
+    items
+      .filter((item) => item !== 'tube-feed' || cautions.includes('tube-feeding'))
+      .map((item) => [
+        item,
+        { leastMinutes: hours[item] * 60, nothingFrom: nothingFrom ?? null } satisfies StopRule,
+      ]),
   );
+}
+
+const feedItems: Readonly<Record<Feeding, readonly Item[]>> = {
+  breast: ['breast-milk'],
+  formula: ['formula'],
+  'breast-and-formula': ['breast-milk', 'formula'],
+  'family-food': ['solid-food', 'cows-milk'],
+};
+
+/** The stop of what this child usually takes last; of every meal where the plan names none of it. */
+function mealStop(stops: readonly FastingStop[], feeding: Feeding): Instant {
+  const own = stops.filter(({ item }) => feedItems[feeding].includes(item));
+  const meals = own.length > 0 ? own : stops.filter(({ item }) => isMeal(item));
+  return Math.min(...(meals.length > 0 ? meals : stops).map(({ stopAt }) => stopAt));
 }
 
 function standardPlan(basis: StandardPlan['basis'], request: ComposedPlanRequest): StandardPlan {
   const before = (instant: Instant, minutes: number): Instant =>
     instant - minutes * millisecondsPerMinute;
-  const { arrivalAt, leastMinutes: byItem, longestMinutes } = request;
-  const stops = items.flatMap((item): FastingStop[] => {
-    const leastMinutes = byItem[item];
-    if (leastMinutes === undefined) return [];
-    return [{ item, leastMinutes, stopAt: before(arrivalAt, leastMinutes) }];
-  });
-  if (stops.length === 0) throw new RangeError('A plan needs hours for at least one item.');
+  const { arrivalAt, zone, longestMinutes, usual } = request;
+  const stops = stopsOf(request.rules, arrivalAt, zone);
+  const stopAt = Math.min(...stops.map((stop) => stop.stopAt));
+  const nothingAt = Math.max(...stops.map((stop) => stop.stopAt));
+  const mealStopAt = mealStop(stops, request.feeding);
   const leastMinutes = Math.max(...stops.map((stop) => stop.leastMinutes));
-  const stopAt = before(arrivalAt, leastMinutes);
   const likelyCollectionAt = before(arrivalAt, -request.usualWaitMinutes);
+  const earliestLastMealAt = before(likelyCollectionAt, longestMinutes);
   const isInfant = request.ageMonths < 12;
   const leaveAt = before(arrivalAt, request.travelMinutes);
   const bedtimeAt = Math.min(request.bedtimeAt ?? stopAt, stopAt);
+  const setFeedAt = request.lastFeedTime
+    ? lastBefore(mealStopAt, request.lastFeedTime, zone)
+    : null;
+  const lastFeedAt = setFeedAt ?? (isInfant ? before(mealStopAt, infantReminderMinutes) : null);
   return {
     kind: 'standard',
     basis,
@@ -175,20 +225,36 @@ function standardPlan(basis: StandardPlan['basis'], request: ComposedPlanRequest
     isInfant,
     stops,
     stopAt,
-    allSame: stops.every((stop) => stop.stopAt === stopAt),
+    nothingAt,
+    mealStopAt,
+    allSame: stopAt === nothingAt,
     leastMinutes,
     longestMinutes,
-    latestIntakeAt: stopAt,
-    earliestLastMealAt: before(likelyCollectionAt, longestMinutes),
-    lastFeedAt: isInfant ? before(stopAt, infantReminderMinutes) : null,
-    stopReminderAt: isInfant
-      ? before(stopAt, infantReminderMinutes)
-      : before(bedtimeAt, bedtimeReminderMinutes),
+    latestIntakeAt: mealStopAt,
+    earliestLastMealAt,
+    lastFeedAt,
+    stopReminderAt: lastFeedAt ?? before(bedtimeAt, bedtimeReminderMinutes),
+    ...nightOfPlan(usual, { arrivalAt, mealStopAt, earliestLastMealAt, zone }),
     wakeAt: before(leaveAt, request.readyMinutes),
     leaveAt,
     arriveAt: arrivalAt,
     likelyCollectionAt,
     eatAgainAt: before(likelyCollectionAt, -request.eatAgainAfterMinutes),
+    explanation: {
+      rule: `fasting-plan.${basis}`,
+      inputs: {
+        ageMonths: request.ageMonths,
+        arrivalAt,
+        likelyCollectionAt,
+        leastMinutes,
+        longestMinutes,
+        stopAt,
+        nothingAt,
+        clock: stops.find((stop) => stop.stopAt === stopAt)?.clock ?? null,
+        protocolVersion: request.protocolVersion,
+        individualVersion: request.individualVersion,
+      },
+    },
   };
 }
 

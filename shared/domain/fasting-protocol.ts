@@ -3,7 +3,8 @@
  * day and signed by a clinician. Published sources disagree (3 to 10 hours), so that no hour is
  * written anywhere but in a protocol.
  */
-import type { Day } from './day';
+import { cautions, type Caution } from './cautions';
+import type { Day, LocalTime } from './day';
 
 export const items = [
   'solid-food',
@@ -16,6 +17,10 @@ export const items = [
 ] as const;
 export type Item = (typeof items)[number];
 
+/** Comforts that a protocol may allow while nothing goes down by mouth. */
+export const allowableItems = ['pacifier', 'cuddling', 'moist-lips', 'tooth-brushing'] as const;
+export type AllowableItem = (typeof allowableItems)[number];
+
 export interface FastingBand {
   /** Completed months on the day of the morning, first of the band. */
   readonly fromMonths: number;
@@ -25,6 +30,11 @@ export interface FastingBand {
   readonly individualPlan: boolean;
   readonly leastHours: Readonly<Record<Item, number>> | null;
   readonly longestHours: number | null;
+  /**
+   * Nothing at all from this clock time of the night before the arrival, where the clinic's rule
+   * is a clock time; the earlier of it and the hours counts. Families never read midnight.
+   */
+  readonly nothingFrom: LocalTime | null;
 }
 
 export interface FastingProtocol {
@@ -39,6 +49,12 @@ export interface FastingProtocol {
   readonly usualWaitMinutes: number;
   /** From collection until the child may eat and drink. */
   readonly eatAgainAfterMinutes: number;
+  /** What a child may have during the fast, because nothing of it reaches the stomach. */
+  readonly allowedItems: readonly AllowableItem[];
+  /** Conditions that hold the standard plan until a clinician has composed one for the child. */
+  readonly individualPlanCautions: readonly Caution[];
+  /** Advice: collect within so many minutes of waking; null where the clinic gives none. */
+  readonly wakeToCollectionMinutes: number | null;
   readonly bands: readonly FastingBand[];
 }
 
@@ -53,6 +69,7 @@ function band(fromMonths: number, toMonths: number | null, least: number, longes
     individualPlan: false,
     leastHours: everythingByMouth(least),
     longestHours: longest,
+    nothingFrom: null,
   };
 }
 
@@ -73,8 +90,18 @@ export const startingProtocol: FastingProtocol = {
   signedOn: null,
   usualWaitMinutes: 30,
   eatAgainAfterMinutes: 15,
+  allowedItems: ['pacifier'],
+  individualPlanCautions: cautions,
+  wakeToCollectionMinutes: null,
   bands: [
-    { fromMonths: 0, toMonths: 2, individualPlan: true, leastHours: null, longestHours: null },
+    {
+      fromMonths: 0,
+      toMonths: 2,
+      individualPlan: true,
+      leastHours: null,
+      longestHours: null,
+      nothingFrom: null,
+    },
     band(3, 5, 4, 6),
     band(6, 11, 4, 8),
     band(12, 23, 6, 12),
@@ -82,6 +109,13 @@ export const startingProtocol: FastingProtocol = {
     band(60, null, 6, 14),
   ],
 };
+
+/** What a version stored before these fields were known holds: the shipped value of each. */
+export const protocolDefaults = {
+  allowedItems: startingProtocol.allowedItems,
+  individualPlanCautions: startingProtocol.individualPlanCautions,
+  wakeToCollectionMinutes: startingProtocol.wakeToCollectionMinutes,
+} as const satisfies Partial<FastingProtocol>;
 
 export function bandFor(protocol: FastingProtocol, ageMonths: number): FastingBand | null {
   return (
@@ -91,125 +125,4 @@ export function bandFor(protocol: FastingProtocol, ageMonths: number): FastingBa
         (candidate.toMonths === null || ageMonths <= candidate.toMonths),
     ) ?? null
   );
-}
-
-export type ProtocolProblemCode =
-  | 'no-bands'
-  | 'not-from-birth'
-  | 'gap'
-  | 'overlap'
-  | 'open-band-not-last'
-  | 'not-to-the-end'
-  | 'months-reversed'
-  | 'hours-missing'
-  | 'hours-not-positive'
-  | 'longest-not-above-least'
-  | 'wait-passes-longest'
-  | 'under-3-months-without-individual-plan'
-  | 'minutes-negative';
-
-export interface ProtocolProblem {
-  readonly path: string;
-  readonly code: ProtocolProblemCode;
-  readonly message: string;
-}
-
-/** Everything that must be mended before a clinician may sign; empty when the protocol holds. */
-export function validateProtocol(protocol: FastingProtocol): ProtocolProblem[] {
-  const { bands, usualWaitMinutes, eatAgainAfterMinutes } = protocol;
-  const problems: ProtocolProblem[] = [];
-  const add = (path: string, code: ProtocolProblemCode, message: string): void => {
-    problems.push({ path, code, message });
-  };
-  if (!(usualWaitMinutes >= 0)) {
-    add('usualWaitMinutes', 'minutes-negative', 'The usual wait cannot be negative.');
-  }
-  if (!(eatAgainAfterMinutes >= 0)) {
-    add('eatAgainAfterMinutes', 'minutes-negative', 'The time to the next feed is negative.');
-  }
-  const first = bands[0];
-  if (!first) {
-    add('bands', 'no-bands', 'Add at least one age band.');
-    return problems;
-  }
-  if (first.fromMonths !== 0) {
-    add('bands.0.fromMonths', 'not-from-birth', 'The first band must begin at 0 months.');
-  }
-  bands.forEach((current, index) => {
-    problems.push(...bandProblems(current, `bands.${index}`, protocol));
-    const next = bands[index + 1];
-    if (next) problems.push(...seamProblems(current, next, index));
-  });
-  if (bands[bands.length - 1]?.toMonths !== null) {
-    add(
-      `bands.${bands.length - 1}.toMonths`,
-      'not-to-the-end',
-      'The last band must have no upper age.',
-    );
-  }
-  return problems;
-}
-
-function seamProblems(current: FastingBand, next: FastingBand, index: number): ProtocolProblem[] {
-  const path = `bands.${index + 1}.fromMonths`;
-  if (current.toMonths === null) {
-    return [
-      {
-        path: `bands.${index}.toMonths`,
-        code: 'open-band-not-last',
-        message: 'Only the last band may be without an upper age.',
-      },
-    ];
-  }
-  const expected = current.toMonths + 1;
-  if (next.fromMonths > expected) {
-    const message = `No band holds ${expected} to ${next.fromMonths - 1} months.`;
-    return [{ path, code: 'gap', message }];
-  }
-  if (next.fromMonths < expected) {
-    const message = `Two bands hold ${next.fromMonths} to ${current.toMonths} months.`;
-    return [{ path, code: 'overlap', message }];
-  }
-  return [];
-}
-
-function bandProblems(
-  current: FastingBand,
-  path: string,
-  protocol: FastingProtocol,
-): ProtocolProblem[] {
-  const problems: ProtocolProblem[] = [];
-  const add = (field: string, code: ProtocolProblemCode, message: string): void => {
-    problems.push({ path: `${path}.${field}`, code, message });
-  };
-  if (current.toMonths !== null && current.toMonths < current.fromMonths) {
-    add('toMonths', 'months-reversed', 'The band ends before it begins.');
-  }
-  if (current.individualPlan) return problems;
-  if (current.fromMonths < 3) {
-    add(
-      'individualPlan',
-      'under-3-months-without-individual-plan',
-      'Children under 3 months always get an individual plan.',
-    );
-  }
-  if (!current.leastHours) add('leastHours', 'hours-missing', 'Give the least hours.');
-  if (current.longestHours === null) {
-    add('longestHours', 'hours-missing', 'Give the longest fast.');
-  }
-  if (!current.leastHours || current.longestHours === null) return problems;
-  for (const item of items) {
-    const least = current.leastHours[item];
-    const field = `leastHours.${item}`;
-    if (!(least > 0)) {
-      add(field, 'hours-not-positive', 'Hours must be more than 0.');
-    } else if (current.longestHours <= least) {
-      add('longestHours', 'longest-not-above-least', `Must be longer than ${least} hours.`);
-      break;
-    } else if (current.longestHours * 60 < least * 60 + protocol.usualWaitMinutes) {
-      add('longestHours', 'wait-passes-longest', 'The usual wait alone would pass it.');
-      break;
-    }
-  }
-  return problems;
 }

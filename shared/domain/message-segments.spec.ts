@@ -1,5 +1,5 @@
 import { SegmentedMessage } from 'sms-segments-calculator';
-import { messageSegments } from './message-segments';
+import { inShortAlphabet, messageSegments } from './message-segments';
 
 const a = (count: number): string => 'a'.repeat(count);
 const ha = (count: number): string => 'ሀ'.repeat(count);
@@ -92,5 +92,21 @@ describe('parts of a text', () => {
       expect([text, messageSegments(text).segments]).toEqual([text, oracle.segmentsCount]);
       expect(messageSegments(text).encoding === 'gsm-7').toBe(oracle.encodingName === 'GSM-7');
     }
+  });
+});
+
+describe('the short alphabet', () => {
+  it.each([
+    ['sábado', 'sabado'],
+    ['Don’t wait…', "Don't wait..."],
+    ['miércoles', 'miércoles'],
+    ['6:30\u202fa.m.', '6:30 a.m.'],
+    ['áíóúÁÍÓÚçãõ', 'aiouAIOUÇao'],
+    ['‘a’ “b” – c — d…', `'a' "b" - c - d...`],
+    ['a\u00a0b\u202fc\td', 'a b c d'],
+    // Another script stays as it is, its accents too.
+    ['الأربعاء sábado', 'الأربعاء sábado'],
+  ])('%j is written %j', (text, expected) => {
+    expect(inShortAlphabet(text)).toBe(expected);
   });
 });

@@ -57,3 +57,21 @@ function partsNeeded(sizes: readonly number[], part: number): number {
   }
   return parts;
 }
+
+/** What stands for a letter or mark that the short alphabet lacks, as people write it in texts. */
+const plainer: Readonly<Record<string, string>> = {
+  ...{ á: 'a', í: 'i', ó: 'o', ú: 'u', Á: 'A', Í: 'I', Ó: 'O', Ú: 'U', ç: 'Ç', ã: 'a', õ: 'o' },
+  ...{ '‘': "'", '’': "'", '“': '"', '”': '"', '–': '-', '—': '-', '…': '...' },
+  ...{ '\u00a0': ' ', '\u202f': ' ', '\t': ' ' },
+};
+
+/**
+ * The text in the short alphabet where that costs nothing but an accent ("sabado") or a curly quote;
+ * one such letter would halve what a part holds. A text in another script stays as it is.
+ */
+export function inShortAlphabet(text: string): string {
+  const plain = [...text].map((character) => plainer[character] ?? character);
+  return plain.every((part) => [...part].every((character) => septetsOf.has(character)))
+    ? plain.join('')
+    : text;
+}

@@ -14,7 +14,7 @@ const child = (childId: number, more: Partial<WaitingChild> = {}): WaitingChild 
   arrivedAt: at('06:20'),
   isDoorChecked: true,
   readyAt: at('06:30'),
-  lastIntakeAt: at('00:30'),
+  hungryFromAt: at('00:30'),
   longestMinutes: 780,
   ...more,
 });
@@ -32,6 +32,18 @@ describe('who is next', () => {
       childId: 1,
       roomId: 2,
       reason: 'only-one-ready',
+      explanation: {
+        rule: 'order-of-morning.only-one-ready',
+        // 13 h since 0:30 leave 6 h 30 min.
+        inputs: {
+          now,
+          waiting: 5,
+          ready: 1,
+          minutesLeft: 390,
+          bornOn: '2024-02-02',
+          bookedAt: at('06:30'),
+        },
+      },
     });
   });
 
@@ -56,7 +68,7 @@ describe('who is next', () => {
       childId: 2,
       reason: 'booked-first',
     });
-    const unknown = { lastIntakeAt: null };
+    const unknown = { hungryFromAt: null };
     expect(next(child(1, unknown), child(2, { ...unknown, bornOn: '2025-05-05' }))).toMatchObject({
       childId: 2,
       reason: 'youngest',
@@ -64,14 +76,68 @@ describe('who is next', () => {
   });
 
   it('is nobody while nobody is ready or no room is free', () => {
-    expect(next()).toEqual({ childId: null, reason: 'nobody-ready' });
+    expect(next()).toMatchObject({ childId: null, reason: 'nobody-ready' });
     const busy = [
       { id: 1, freeAt: null },
       { id: 2, freeAt: at('07:01') },
     ];
-    expect(nextChild({ waiting: [child(1)], rooms: busy, now })).toEqual({
+    expect(nextChild({ waiting: [child(1)], rooms: busy, now })).toMatchObject({
       childId: null,
       reason: 'no-room-free',
+      explanation: { rule: 'order-of-morning.no-room-free', inputs: { ready: 1 } },
     });
+  });
+});
+
+describe('the boundaries of the order', () => {
+  const dueIn = (minutes: number): Partial<WaitingChild> => ({
+    hungryFromAt: now,
+    longestMinutes: minutes,
+  });
+
+  it('a child is ready in the very minute, and a room free in it', () => {
+    const free = [{ id: 7, freeAt: now }];
+    expect(nextChild({ waiting: [child(1, { readyAt: now })], rooms: free, now })).toMatchObject({
+      childId: 1,
+      roomId: 7,
+    });
+  });
+
+  it.each([
+    [30, 'longest-fast-near'],
+    [31, 'only-one-ready'],
+  ])('with %i minutes left the reason is %s', (minutes, reason) => {
+    expect(next(child(1, dueIn(minutes)))).toMatchObject({ reason });
+  });
+
+  it.each([
+    // Less than 15 minutes apart they count as alike, and the younger goes first.
+    [114, 2, 'youngest'],
+    [115, 1, 'nearest-to-longest-fast'],
+  ])('of 100 and %i minutes', (minutes, childId, reason) => {
+    const younger = { bornOn: '2025-05-05' };
+    expect(next(child(1, dueIn(100)), child(2, { ...dueIn(minutes), ...younger }))).toMatchObject({
+      childId,
+      reason,
+    });
+  });
+
+  it('the number of the child and of the room decide where nothing else does', () => {
+    const free = [
+      { id: 4, freeAt: at('06:30') },
+      { id: 3, freeAt: at('06:30') },
+    ];
+    const waiting = [child(9), child(8)];
+    expect(nextChild({ waiting, rooms: free, now })).toMatchObject({ childId: 8, roomId: 3 });
+  });
+
+  it('says what it knew when nobody is ready, and where hunger is not known', () => {
+    expect(next(child(1, { readyAt: null })).explanation).toEqual({
+      rule: 'order-of-morning.nobody-ready',
+      inputs: { now, waiting: 1, ready: 0, minutesLeft: null, bornOn: null, bookedAt: null },
+    });
+    const { inputs } = next(child(1, { hungryFromAt: null })).explanation;
+    expect(inputs['minutesLeft']).toBeNull();
+    expect(next(child(1, dueIn(90.5))).explanation.inputs['minutesLeft']).toBe(90);
   });
 });

@@ -2,6 +2,7 @@
  * Who is next, with the reason. Only a suggestion: staff decide. Ready children first; among them
  * the one nearest its longest fast, then the youngest, then the booked time.
  */
+import type { Explanation } from './explanation';
 import { compareDays, millisecondsPerMinute, type Day, type Instant } from './day';
 
 export interface WaitingChild {
@@ -12,8 +13,8 @@ export interface WaitingChild {
   readonly isDoorChecked: boolean;
   /** When the least hours are over; null when a person still decides. */
   readonly readyAt: Instant | null;
-  /** The earlier reading of a doubtful time; null when not known. */
-  readonly lastIntakeAt: Instant | null;
+  /** Since when it is hungry, by the earlier reading of a doubtful time; null when not known. */
+  readonly hungryFromAt: Instant | null;
   readonly longestMinutes: number;
 }
 
@@ -26,9 +27,10 @@ export interface RoomState {
 export type NextReason =
   'longest-fast-near' | 'nearest-to-longest-fast' | 'youngest' | 'booked-first' | 'only-one-ready';
 
-export type NextChild =
+export type NextChild = { readonly explanation: Explanation } & (
   | { readonly childId: number; readonly roomId: number; readonly reason: NextReason }
-  | { readonly childId: null; readonly reason: 'nobody-ready' | 'no-room-free' };
+  | { readonly childId: null; readonly reason: 'nobody-ready' | 'no-room-free' }
+);
 
 const nearMinutes = 30;
 /** Children whose remaining time differs by less than this count as alike. */
@@ -47,17 +49,42 @@ export function nextChild(request: {
       child.readyAt !== null &&
       child.readyAt <= now,
   );
+  const explained = (rule: string, chosen: WaitingChild | null): Explanation => ({
+    rule: `order-of-morning.${rule}`,
+    inputs: {
+      now,
+      waiting: waiting.length,
+      ready: ready.length,
+      minutesLeft: chosen?.hungryFromAt == null ? null : Math.floor(minutesLeft(chosen, now)),
+      bornOn: chosen?.bornOn ?? null,
+      bookedAt: chosen?.bookedAt ?? null,
+    },
+  });
   const [first, ...others] = ready;
-  if (!first) return { childId: null, reason: 'nobody-ready' };
+  if (!first)
+    return {
+      childId: null,
+      reason: 'nobody-ready',
+      explanation: explained('nobody-ready', null),
+    };
   const room = rooms
     .filter(({ freeAt }) => freeAt !== null && freeAt <= now)
     .sort((left, right) => (left.freeAt ?? 0) - (right.freeAt ?? 0) || left.id - right.id)[0];
-  if (!room) return { childId: null, reason: 'no-room-free' };
-  const suggest = (child: WaitingChild, reason: NextReason): NextChild => ({
-    childId: child.childId,
-    roomId: room.id,
-    reason: minutesLeft(child, now) <= nearMinutes ? 'longest-fast-near' : reason,
-  });
+  if (!room)
+    return {
+      childId: null,
+      reason: 'no-room-free',
+      explanation: explained('no-room-free', first),
+    };
+  const suggest = (child: WaitingChild, otherwise: NextReason): NextChild => {
+    const reason = minutesLeft(child, now) <= nearMinutes ? 'longest-fast-near' : otherwise;
+    return {
+      childId: child.childId,
+      roomId: room.id,
+      reason,
+      explanation: explained(reason, child),
+    };
+  };
   if (others.length === 0) return suggest(first, 'only-one-ready');
 
   const least = Math.min(...ready.map((child) => minutesLeft(child, now)));
@@ -78,6 +105,6 @@ export function nextChild(request: {
 
 /** Until the longest fast; without a known last intake nothing presses. */
 function minutesLeft(child: WaitingChild, now: Instant): number {
-  if (child.lastIntakeAt === null) return Number.POSITIVE_INFINITY;
-  return child.longestMinutes - (now - child.lastIntakeAt) / millisecondsPerMinute;
+  if (child.hungryFromAt === null) return Number.POSITIVE_INFINITY;
+  return child.longestMinutes - (now - child.hungryFromAt) / millisecondsPerMinute;
 }

@@ -209,11 +209,21 @@ describe('brothers and sisters', () => {
     expect(placesOn({ ...both, booked })).toEqual(['12 07:30', '11 08:00']);
   });
 
-  it('are parted only where no neighbouring places are left, and it is said', () => {
+  describe('with no neighbouring places left', () => {
     const booked = ['06:30', '08:00'].map((arrivalTime) => ({ on: '2026-12-07', arrivalTime }));
-    const [run] = proposeRuns({ ...both, booked }).runs;
-    expect(run?.days.map(({ neighbouring }) => neighbouring)).toEqual([false, true, true]);
-    expect(placesOn({ ...both, booked })).toEqual(['12 06:00', '11 07:30']);
+
+    it('do not come, and the places that are left are named', () => {
+      expect(proposeRuns({ ...both, booked }).days[0]?.refused).toEqual([
+        { code: 'siblings-apart', params: { left: 3 } },
+      ]);
+    });
+
+    it('are parted only when they may be, and it is said', () => {
+      const asked = { ...both, booked, siblingsMayPart: true };
+      const [run] = proposeRuns(asked).runs;
+      expect(run?.days.map(({ neighbouring }) => neighbouring)).toEqual([false, true, true]);
+      expect(placesOn(asked)).toEqual(['12 06:00', '11 07:30']);
+    });
   });
 
   it('need as many places as they are', () => {
@@ -224,6 +234,122 @@ describe('brothers and sisters', () => {
     expect(proposeRuns({ ...both, booked }).days[0]?.refused).toEqual([
       { code: 'no-places-left', params: { needed: 2, left: 1 } },
     ]);
+  });
+});
+
+describe('every reason of a day', () => {
+  it('lead times of family, ride and report, each with its days, and the full morning beside them', () => {
+    const booked = base.places.map(({ arrivalTime }) => ({ on: '2026-12-08', arrivalTime }));
+    const now = instantOf({ on: '2026-12-07', time: '10:00', zone });
+    const asked = { ...base, now, booked, rideLeadDays: 3, reportingLeadDays: 4 };
+    expect(proposeRuns(asked).days[1]?.refused).toEqual([
+      { code: 'too-soon', params: { leadDays: 2 } },
+      { code: 'ride-lead-time', params: { leadDays: 3 } },
+      { code: 'reporting-lead-time', params: { leadDays: 4 } },
+      { code: 'no-places-left', params: { needed: 1, left: 0 } },
+    ]);
+    expect(proposeRuns(asked).days[3]?.refused.map(({ code }) => code)).toEqual([
+      'reporting-lead-time',
+    ]);
+  });
+
+  it('a public holiday by its own name', () => {
+    const closures = [{ on: '2026-12-25', reason: 'Christmas Day', kind: 'holiday' as const }];
+    expect(proposeRuns({ ...base, from: '2026-12-21', closures }).days[4]?.refused).toEqual([
+      { code: 'public-holiday', params: { reason: 'Christmas Day' } },
+    ]);
+  });
+
+  it('each child whose fast would be too long, with its minutes', () => {
+    const places = [
+      { arrivalTime: '08:00', roomId: 1 },
+      { arrivalTime: '08:30', roomId: 2 },
+    ];
+    const children = [
+      { ...toddler, usualLastMealTime: '18:00' },
+      { ...infant, usualLastMealTime: '22:30' },
+    ];
+    // 18:00 to 8:00 and 22:30 to 8:00, each with half an hour of waiting.
+    expect(proposeRuns({ ...base, places, children }).days[0]?.refused).toEqual([
+      { code: 'fast-too-long', params: { childId: 12, minutes: 600, longestMinutes: 480 } },
+      { code: 'fast-too-long', params: { childId: 11, minutes: 870, longestMinutes: 780 } },
+    ]);
+  });
+
+  it('places that are left only after the last receipt of the laboratory', () => {
+    const laboratory = { ...base.laboratory, cutOffTimes: { 1: '07:30' } };
+    const booked = ['06:00', '06:30'].map((arrivalTime) => ({ on: '2026-12-07', arrivalTime }));
+    expect(proposeRuns({ ...base, laboratory, booked }).days[0]?.refused).toEqual([
+      { code: 'no-places-left', params: { needed: 1, left: 0 } },
+      { code: 'laboratory-cut-off', params: { cutOff: '07:30' } },
+    ]);
+  });
+});
+
+describe('turnover', () => {
+  const turnover = {
+    rooms: [
+      { id: 1, closureMinutes: 60 },
+      { id: 2, closureMinutes: 60 },
+    ],
+    staffPairs: 1,
+    minutesPerChild: 30,
+    limit: 5,
+  };
+  const left = (arrivalTime: string, roomId: number, more = {}): number =>
+    proposeRuns({
+      ...base,
+      turnover: { ...turnover, ...more },
+      booked: [{ on: '2026-12-07', arrivalTime, roomId }],
+    }).days[0]?.placesLeft ?? -1;
+
+  it('of a booking beside the places of today keeps its room and its pair', () => {
+    // At 6:15 in room 1: its room is closed until 7:45, and the only pair is busy until 6:45.
+    expect(left('06:15', 1)).toBe(2);
+    // A second pair frees 6:30 in room 2, which nobody uses.
+    expect(left('06:15', 1, { staffPairs: 2 })).toBe(3);
+    // Clean sooner, room 1 is free again at 7:30.
+    expect(left('06:15', 1, { rooms: [{ id: 1, closureMinutes: 23 }] })).toBe(3);
+  });
+
+  it('is said as a reason where it leaves too few', () => {
+    const places = base.places.slice(0, 2);
+    const booked = [{ on: '2026-12-07', arrivalTime: '06:15', roomId: 2 }];
+    expect(proposeRuns({ ...base, places, booked, turnover }).days[0]?.refused).toEqual([
+      { code: 'no-places-left', params: { needed: 1, left: 0 } },
+      { code: 'turnover', params: { places: 2 } },
+    ]);
+  });
+
+  it('never lets more children come than the clinic takes in a morning', () => {
+    expect(left('05:00', 1, { limit: 3 })).toBe(2);
+    expect(left('05:00', 1, { limit: 1 })).toBe(0);
+  });
+});
+
+describe('a child that grows older meanwhile', () => {
+  it('has the hours of its age on each day', () => {
+    const from = '2026-12-09';
+    const child = { ...infant, longestMinutes: 240, laterLimits: [{ ...infant, from }] };
+    expect(refusals({ ...base, count: 1, children: [child] })).toMatchObject({
+      '2026-12-08': ['fast-too-long'],
+      '2026-12-09': [],
+    });
+  });
+
+  it('counts from a clock time where the protocol has one and it lies before the hours', () => {
+    // Nothing from 21:00 until 6:30 is 9.5 hours, from 1:00 the six hours of the protocol count.
+    const until = (nothingFrom: string) => ({ ...toddler, longestMinutes: 540, nothingFrom });
+    expect(starts({ ...base, children: [until('21:00')] })).toEqual([]);
+    expect(starts({ ...base, children: [until('01:00')] })).toHaveLength(3);
+  });
+
+  it('keeps its longest fast by the last of its night feeds', () => {
+    const child = { ...infant, usualLastMealTime: '19:00' };
+    expect(starts({ ...base, children: [child] })).toEqual([]);
+    // The feed at 5:00 falls away: the one at the stop stands for it.
+    for (const nightFeedTimes of [['23:30'], ['22:00', '01:30'], ['05:00', '22:00']])
+      expect(starts({ ...base, children: [{ ...child, nightFeedTimes }] })).toHaveLength(3);
   });
 });
 

@@ -3,8 +3,18 @@
  * rooms and the children's fasting limits; for every day that is refused, why. Brothers and
  * sisters come on the same mornings in neighbouring places, the youngest first.
  */
-import { morningPlaces, type ChildPlace, type SeriesChild } from './morning-places';
+import { byDay, obstacleAt } from './booked-places';
+import { morningPlaces } from './morning-places';
 import type { Place } from './places-of-morning';
+import type {
+  MorningOnDay,
+  ProposedDay,
+  Refusal,
+  RefusalCode,
+  Run,
+  SeriesProposal,
+  SeriesRequest,
+} from './series-request';
 import {
   addDays,
   dayOf,
@@ -13,112 +23,12 @@ import {
   validateDay,
   weekdayOf,
   type Day,
-  type Instant,
-  type LocalTime,
   type Weekday,
 } from './zone';
 
+export type { BookedPlace, Turnover } from './booked-places';
 export type { ChildPlace, SeriesChild } from './morning-places';
-
-export interface ClinicDay {
-  readonly weekday: Weekday;
-  /** First and last arrival, inclusive. */
-  readonly from: LocalTime;
-  readonly until: LocalTime;
-}
-
-export interface Closure {
-  readonly on: Day;
-  readonly reason: string;
-}
-
-export interface LaboratoryDays {
-  readonly receivingWeekdays: readonly Weekday[];
-  /** Last receipt of the day; a weekday without one has none. */
-  readonly cutOffTimes: Readonly<Partial<Record<Weekday, LocalTime>>>;
-  readonly closures?: readonly Closure[];
-  /** From collection to receipt. */
-  readonly minutesToLaboratory?: number;
-}
-
-export interface BookedPlace {
-  readonly on: Day;
-  readonly arrivalTime: LocalTime;
-  /** Without a room every place at that time is taken. */
-  readonly roomId?: number;
-}
-
-export interface SeriesRequest {
-  readonly zone: string;
-  readonly from: Day;
-  readonly weeks: number;
-  /** Consecutive mornings in a run, 1 to 5. */
-  readonly count: number;
-  readonly clinicDays: readonly ClinicDay[];
-  readonly closures: readonly Closure[];
-  readonly laboratory: LaboratoryDays;
-  /** The places of one morning. */
-  readonly places: readonly Place[];
-  readonly booked: readonly BookedPlace[];
-  readonly children: readonly SeriesChild[];
-  readonly usualWaitMinutes: number;
-  /** Days from today to the first morning at the least. */
-  readonly leadDays: number;
-  readonly now: Instant;
-}
-
-export type RefusalCode =
-  | 'past'
-  | 'too-soon'
-  | 'not-a-clinic-day'
-  | 'closed'
-  | 'laboratory-does-not-receive'
-  | 'laboratory-closed'
-  | 'laboratory-cut-off'
-  | 'no-places-left'
-  | 'fast-too-long'
-  | 'run-would-break';
-
-export interface Refusal {
-  readonly code: RefusalCode;
-  readonly params: Readonly<Record<string, string | number>>;
-}
-
-export interface ProposedDay {
-  readonly on: Day;
-  readonly weekday: Weekday;
-  readonly placesLeft: number;
-  /** Why no run starts here; empty when one does. */
-  readonly refused: readonly Refusal[];
-  readonly canStart: boolean;
-  /** The day itself serves as a morning, even where no run can start on it. */
-  readonly isPossible: boolean;
-}
-
-export interface RunDay {
-  readonly on: Day;
-  readonly places: readonly ChildPlace[];
-  /** False when no neighbouring places were left. */
-  readonly neighbouring: boolean;
-}
-
-export interface Run {
-  readonly days: readonly RunDay[];
-  readonly startsInDays: number;
-}
-
-export interface SeriesProposal {
-  readonly days: readonly ProposedDay[];
-  readonly runs: readonly Run[];
-}
-
-export interface MorningOnDay {
-  readonly on: Day;
-  readonly placesLeft: number;
-  readonly refused: readonly Refusal[];
-  /** Null when refused. */
-  readonly morning: RunDay | null;
-}
+export type * from './series-request';
 
 export function proposeRuns(request: SeriesRequest): SeriesProposal {
   const { from, weeks, count } = request;
@@ -129,8 +39,9 @@ export function proposeRuns(request: SeriesRequest): SeriesProposal {
   if (request.children.length === 0) throw new RangeError('Plan for at least one child.');
   const today = dayOf(request.now, request.zone);
   const span = weeks * 7;
+  const look = morningsOf(request);
   const mornings = Array.from({ length: span + count - 1 }, (_, index) =>
-    morningOn(request, addDays(validateDay(from), index)),
+    look(addDays(validateDay(from), index)),
   );
   const days: ProposedDay[] = [];
   const runs: Run[] = [];
@@ -157,60 +68,110 @@ function runWouldBreak(broken: MorningOnDay): Refusal {
 }
 
 /** One day as a morning for all the children: their places, or every reason against it. */
-export function morningOn(request: SeriesRequest, on: Day): MorningOnDay {
-  const weekday = weekdayOf(on);
-  const refused: Refusal[] = [];
-  const refuse = (code: RefusalCode, params: Refusal['params'] = {}): void => {
-    refused.push({ code, params });
-  };
-  const ahead = daysBetween(dayOf(request.now, request.zone), on);
-  if (ahead < 0) refuse('past');
-  else if (ahead < request.leadDays) refuse('too-soon', { leadDays: request.leadDays });
+export const morningOn = (request: SeriesRequest, on: Day): MorningOnDay => morningsOf(request)(on);
 
-  const clinicDay = request.clinicDays.find((candidate) => candidate.weekday === weekday);
-  const closure = request.closures.find((candidate) => candidate.on === on);
-  if (!clinicDay) refuse('not-a-clinic-day', { weekday });
-  if (closure) refuse('closed', { reason: closure.reason });
+/** Looks at days one by one; what is booked and closed is sorted by day once for all of them. */
+export function morningsOf(request: SeriesRequest): (on: Day) => MorningOnDay {
+  const { children, turnover } = request;
+  const today = dayOf(request.now, request.zone);
+  const closures = byDay(request.closures);
+  const laboratoryClosures = byDay(request.laboratory.closures ?? []);
+  // Days that are over are refused whatever was booked on them.
+  const booked = byDay(request.booked, today);
+  const placesOn = placesByWeekday(request);
 
-  const { receivingWeekdays, closures = [] } = request.laboratory;
-  const laboratoryClosure = closures.find((candidate) => candidate.on === on);
-  if (!receivingWeekdays.includes(weekday)) refuse('laboratory-does-not-receive', { weekday });
-  if (laboratoryClosure) refuse('laboratory-closed', { reason: laboratoryClosure.reason });
-  if (!clinicDay || refused.length > 0) return { on, placesLeft: 0, refused, morning: null };
+  return (on) => {
+    const weekday = weekdayOf(on);
+    const refused: Refusal[] = [];
+    const refuse = (code: RefusalCode, params: Refusal['params'] = {}): void => {
+      refused.push({ code, params });
+    };
+    const ahead = daysBetween(today, on);
+    if (ahead < 0) refuse('past');
+    else
+      for (const [code, leadDays] of leadTimes(request))
+        if (ahead < leadDays) refuse(code, { leadDays });
+    const isHeld = request.heldDays?.includes(on) ?? false;
+    if (isHeld) refuse('held-already');
+    const isOnlyEarly = ahead >= 0 && !isHeld;
 
-  const inHours = request.places.filter(
-    ({ arrivalTime }) => arrivalTime >= clinicDay.from && arrivalTime <= clinicDay.until,
-  );
-  const inTime = inHours.filter((place) => reachesLaboratory(request, weekday, place));
-  const taken = (place: Place): boolean =>
-    request.booked.some(
-      (booked) =>
-        booked.on === on &&
-        booked.arrivalTime === place.arrivalTime &&
-        (booked.roomId ?? place.roomId) === place.roomId,
+    const clinicDay = request.clinicDays.find((candidate) => candidate.weekday === weekday);
+    if (!clinicDay) refuse('not-a-clinic-day', { weekday });
+    for (const { reason, kind } of closures.get(on) ?? [])
+      refuse(kind === 'holiday' ? 'public-holiday' : 'closed', { reason });
+    const isReceived = request.laboratory.receivingWeekdays.includes(weekday);
+    if (!isReceived) refuse('laboratory-does-not-receive', { weekday });
+    for (const { reason } of laboratoryClosures.get(on) ?? [])
+      refuse('laboratory-closed', { reason });
+    const none = { on, placesLeft: 0, refused, morning: null };
+    if (!clinicDay || !isOnlyEarly || !isReceived || closures.has(on)) return none;
+    if (laboratoryClosures.has(on)) return none;
+
+    const bookedHere = booked.get(on) ?? [];
+    const { inHours, inTime } = placesOn(weekday);
+    const obstacle = new Map(
+      inHours.map((place) => [place, obstacleAt(place, bookedHere, turnover)]),
     );
-  const placesLeft = inTime.filter((place) => !taken(place)).length;
-  if (inHours.length > 0 && inTime.length === 0) {
-    refuse('laboratory-cut-off', { cutOff: request.laboratory.cutOffTimes[weekday] ?? '' });
-  } else if (placesLeft < request.children.length) {
-    refuse('no-places-left', { needed: request.children.length, left: placesLeft });
-  } else {
-    const found = morningPlaces({ ...request, on, places: inTime, isTaken: taken });
-    if (found.ok) {
-      const { places, neighbouring } = found;
-      return { on, placesLeft, refused, morning: { on, places, neighbouring } };
+    const isFree = (place: Place): boolean => obstacle.get(place) === null;
+    const placesLeft = Math.max(
+      Math.min(
+        inTime.filter(isFree).length,
+        (turnover?.limit ?? Number.POSITIVE_INFINITY) - bookedHere.length,
+      ),
+      0,
+    );
+    const cutOff = request.laboratory.cutOffTimes[weekday] ?? '';
+    if (inHours.length > 0 && inTime.length === 0) {
+      refuse('laboratory-cut-off', { cutOff });
+    } else if (placesLeft < children.length) {
+      refuse('no-places-left', { needed: children.length, left: placesLeft });
+      const turning = inTime.filter((place) => obstacle.get(place) === 'turnover').length;
+      if (turning > 0) refuse('turnover', { places: turning });
+      if (inHours.some((place) => isFree(place) && !inTime.includes(place)))
+        refuse('laboratory-cut-off', { cutOff });
+    } else {
+      const isTaken = (place: Place): boolean => !isFree(place);
+      const found = morningPlaces({ ...request, on, places: inTime, isTaken });
+      if (found.ok) {
+        if (refused.length > 0) return { on, placesLeft, refused, morning: null };
+        const { places, neighbouring } = found;
+        return { on, placesLeft, refused, morning: { on, places, neighbouring } };
+      }
+      if (found.because === 'siblings-apart') refuse('siblings-apart', { left: placesLeft });
+      else
+        for (const { childId, minutes, longestMinutes } of found.fasts)
+          refuse('fast-too-long', { childId, minutes, longestMinutes });
     }
-    refuse('fast-too-long', { childId: found.childId });
-  }
-  return { on, placesLeft, refused, morning: null };
+    return { on, placesLeft, refused, morning: null };
+  };
 }
 
-function reachesLaboratory(request: SeriesRequest, weekday: Weekday, place: Place): boolean {
-  const cutOff = request.laboratory.cutOffTimes[weekday];
-  if (cutOff === undefined) return true;
-  const receivedAt =
-    minutesOfTime(place.arrivalTime) +
-    request.usualWaitMinutes +
-    (request.laboratory.minutesToLaboratory ?? 0);
-  return receivedAt <= minutesOfTime(cutOff);
+const leadTimes = (request: SeriesRequest): readonly (readonly [RefusalCode, number])[] => [
+  ['too-soon', request.leadDays],
+  ['ride-lead-time', request.rideLeadDays ?? 0],
+  ['reporting-lead-time', request.reportingLeadDays ?? 0],
+];
+
+/** The places within the arrivals of a weekday, and those of them that still reach the laboratory. */
+function placesByWeekday(request: SeriesRequest) {
+  const { clinicDays, laboratory, usualWaitMinutes } = request;
+  const known = new Map<Weekday, { readonly inHours: Place[]; readonly inTime: Place[] }>();
+  return (weekday: Weekday) => {
+    const before = known.get(weekday);
+    if (before) return before;
+    const day = clinicDays.find((candidate) => candidate.weekday === weekday);
+    const inHours = request.places.filter(
+      ({ arrivalTime }) => day && arrivalTime >= day.from && arrivalTime <= day.until,
+    );
+    const cutOff = laboratory.cutOffTimes[weekday];
+    const inTime = inHours.filter(
+      ({ arrivalTime }) =>
+        cutOff === undefined ||
+        minutesOfTime(arrivalTime) + usualWaitMinutes + (laboratory.minutesToLaboratory ?? 0) <=
+          minutesOfTime(cutOff),
+    );
+    const found = { inHours, inTime };
+    known.set(weekday, found);
+    return found;
+  };
 }

@@ -3,6 +3,7 @@ import {
   demoLaboratoryProfile,
   dueDays,
   dueOn,
+  explainDueOn,
   isOverdue,
   resultStages,
   specimenClocks,
@@ -13,13 +14,12 @@ import { instantOf } from './zone';
 const zone = 'America/Chicago';
 const at = (time: string): number => instantOf({ on: '2026-12-09', time, zone });
 const base: SpecimenClocksRequest = {
-  profile: demoLaboratoryProfile,
+  profile: { ...demoLaboratoryProfile, minutesToLaboratory: 30 },
   collectedAt: at('07:30'),
   neutralisedAt: null,
   pickedUpAt: null,
   receivedAt: null,
   cutOffAt: at('11:30'),
-  minutesToLaboratory: 30,
   now: at('07:40'),
 };
 const states = (change: Partial<SpecimenClocksRequest>): string[] =>
@@ -27,7 +27,7 @@ const states = (change: Partial<SpecimenClocksRequest>): string[] =>
 
 describe('the clocks of a specimen', () => {
   it('run from collection', () => {
-    expect(specimenClocks(base)).toEqual([
+    expect(specimenClocks(base)).toMatchObject([
       {
         step: 'neutralise',
         dueAt: at('08:00'),
@@ -78,6 +78,62 @@ describe('the clocks of a specimen', () => {
   it('have none for neutralising where the laboratory does not want it', () => {
     const profile = { ...demoLaboratoryProfile, neutraliseWithinMinutes: null };
     expect(states({ profile })).toEqual(['pick-up running', 'receipt running']);
+  });
+});
+
+describe('how a clock was reached', () => {
+  const rules = (change: Partial<SpecimenClocksRequest>): string[] =>
+    specimenClocks({ ...base, ...change }).map(({ explanation }) => explanation.rule);
+
+  it('names the limit that counted', () => {
+    expect(rules({ cutOffAt: null })).toEqual([
+      'specimen.neutralise-within',
+      'specimen.pick-up-before-receipt',
+      'specimen.receipt-within',
+    ]);
+    expect(rules({ cutOffAt: at('11:29') })[2]).toBe('specimen.receipt-by-cut-off');
+    expect(rules({ cutOffAt: at('11:31') })[2]).toBe('specimen.receipt-within');
+  });
+
+  it('gives what it was counted from, and the version of the profile', () => {
+    const [neutralise, pickUp, receipt] = specimenClocks({ ...base, cutOffAt: at('09:00') });
+    const common = { collectedAt: at('07:30'), profileVersion: 1 };
+    expect(neutralise?.explanation.inputs).toEqual({
+      ...common,
+      withinMinutes: 30,
+      dueAt: at('08:00'),
+    });
+    expect(pickUp?.explanation.inputs).toEqual({
+      ...common,
+      withinMinutes: 240,
+      cutOffAt: at('09:00'),
+      receiptDueAt: at('09:00'),
+      minutesToLaboratory: 30,
+      dueAt: at('08:30'),
+    });
+    expect(receipt?.explanation.inputs).toEqual({
+      ...common,
+      withinMinutes: 240,
+      cutOffAt: at('09:00'),
+      receiptDueAt: at('09:00'),
+      dueAt: at('09:00'),
+    });
+  });
+
+  // Clinical facts 7, row 35: 42 days from 2026-12-09.
+  it('and of a result the days of its stage', () => {
+    const profile = { ...demoLaboratoryProfile, version: 4 };
+    const request = { profile, receivedOn: '2026-12-09', stage: 'cultureNegativeFinal' } as const;
+    expect(explainDueOn(request)).toEqual({
+      rule: 'specimen.result-days',
+      inputs: {
+        stage: 'cultureNegativeFinal',
+        receivedOn: '2026-12-09',
+        days: 42,
+        dueOn: '2027-01-20',
+        profileVersion: 4,
+      },
+    });
   });
 });
 

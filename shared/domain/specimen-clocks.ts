@@ -11,6 +11,7 @@ import {
   type LocalTime,
   type Weekday,
 } from './day';
+import type { Explanation } from './explanation';
 
 export const resultStages = [
   'smear',
@@ -30,7 +31,12 @@ export interface LaboratoryProfile {
   readonly signedBy: string | null;
   readonly signedOn: Day | null;
   readonly receivingWeekdays: readonly Weekday[];
+  /** Before this nobody takes a specimen in; a day without one has no opening time. */
+  readonly receivingFromTimes: Readonly<Partial<Record<Weekday, LocalTime>>>;
+  /** The last receipt of a day. */
   readonly cutOffTimes: Readonly<Partial<Record<Weekday, LocalTime>>>;
+  /** How long the courier is under way; 0 where the laboratory is in the house. */
+  readonly minutesToLaboratory: number;
   /** Null where the laboratory neutralises, or does not want it. */
   readonly neutraliseWithinMinutes: number | null;
   readonly receiptWithinMinutes: number;
@@ -50,7 +56,9 @@ export const demoLaboratoryProfile: LaboratoryProfile = {
   signedOn: null,
   // A Monday to Friday laboratory (NorDx 607), so that three mornings start Monday to Wednesday.
   receivingWeekdays: [1, 2, 3, 4, 5],
+  receivingFromTimes: {},
   cutOffTimes: { 1: '11:30', 2: '11:30', 3: '11:30', 4: '11:30', 5: '11:30' },
+  minutesToLaboratory: 0,
   // Half an hour to 6 hours: the strictest, Curry International TB Center, step 4.
   neutraliseWithinMinutes: 30,
   // Within 4 hours: Washington University, Rady Children's Hospital.
@@ -75,6 +83,12 @@ export const demoLaboratoryProfile: LaboratoryProfile = {
   },
 };
 
+/** What a profile stored before these fields were known holds. */
+export const profileDefaults = {
+  receivingFromTimes: {},
+  minutesToLaboratory: 0,
+} as const satisfies Partial<LaboratoryProfile>;
+
 export interface SpecimenTimes {
   readonly collectedAt: Instant;
   readonly neutralisedAt: Instant | null;
@@ -90,13 +104,17 @@ export interface SpecimenClock {
   readonly minutes: number;
   readonly limitMinutes: number;
   readonly state: 'running' | 'soon' | 'late' | 'in-time' | 'done-late';
+  /** Why it is due then: the limit that counts, what it was counted from, and whose it is. */
+  readonly explanation: Explanation;
 }
 
 export interface SpecimenClocksRequest extends SpecimenTimes {
-  readonly profile: LaboratoryProfile;
+  readonly profile: Pick<
+    LaboratoryProfile,
+    'version' | 'receiptWithinMinutes' | 'neutraliseWithinMinutes' | 'minutesToLaboratory'
+  >;
   /** The laboratory's last receipt of the day; null where it has none. */
   readonly cutOffAt: Instant | null;
-  readonly minutesToLaboratory?: number;
   readonly now: Instant;
 }
 
@@ -107,21 +125,39 @@ export function specimenClocks(request: SpecimenClocksRequest): SpecimenClock[] 
   const { profile, collectedAt, cutOffAt } = request;
   const after = (minutes: number): Instant => collectedAt + minutes * millisecondsPerMinute;
   const receiptDueAt = Math.min(after(profile.receiptWithinMinutes), cutOffAt ?? Infinity);
-  const pickUpDueAt = receiptDueAt - (request.minutesToLaboratory ?? 0) * millisecondsPerMinute;
+  const pickUpDueAt = receiptDueAt - profile.minutesToLaboratory * millisecondsPerMinute;
+  const receiptInputs = {
+    withinMinutes: profile.receiptWithinMinutes,
+    cutOffAt,
+    receiptDueAt,
+  };
+  const receiptRule =
+    receiptDueAt === cutOffAt ? 'specimen.receipt-by-cut-off' : 'specimen.receipt-within';
   const clocks = [
-    clock(request, 'pick-up', pickUpDueAt, request.pickedUpAt ?? request.receivedAt),
-    clock(request, 'receipt', receiptDueAt, request.receivedAt),
+    clock(request, 'pick-up', pickUpDueAt, request.pickedUpAt ?? request.receivedAt, {
+      rule: 'specimen.pick-up-before-receipt',
+      inputs: { ...receiptInputs, minutesToLaboratory: profile.minutesToLaboratory },
+    }),
+    clock(request, 'receipt', receiptDueAt, request.receivedAt, {
+      rule: receiptRule,
+      inputs: receiptInputs,
+    }),
   ];
-  if (profile.neutraliseWithinMinutes === null) return clocks;
-  const neutraliseDueAt = after(profile.neutraliseWithinMinutes);
-  return [clock(request, 'neutralise', neutraliseDueAt, request.neutralisedAt), ...clocks];
+  const withinMinutes = profile.neutraliseWithinMinutes;
+  if (withinMinutes === null) return clocks;
+  const neutralise = clock(request, 'neutralise', after(withinMinutes), request.neutralisedAt, {
+    rule: 'specimen.neutralise-within',
+    inputs: { withinMinutes },
+  });
+  return [neutralise, ...clocks];
 }
 
 function clock(
-  { collectedAt, now }: SpecimenClocksRequest,
+  { profile, collectedAt, now }: SpecimenClocksRequest,
   step: SpecimenClock['step'],
   dueAt: Instant,
   doneAt: Instant | null,
+  why: Explanation,
 ): SpecimenClock {
   const reachedAt = doneAt ?? now;
   const soonAt = collectedAt + (dueAt - collectedAt) * soonShare;
@@ -142,6 +178,10 @@ function clock(
     minutes: Math.floor((reachedAt - collectedAt) / millisecondsPerMinute),
     limitMinutes: Math.floor((dueAt - collectedAt) / millisecondsPerMinute),
     state,
+    explanation: {
+      rule: why.rule,
+      inputs: { collectedAt, ...why.inputs, dueAt, profileVersion: profile.version },
+    },
   };
 }
 
@@ -152,6 +192,25 @@ export function dueOn(request: {
   readonly stage: ResultStage;
 }): Day {
   return addDays(request.receivedOn, request.profile.resultDays[request.stage]);
+}
+
+/** How a due day was reached: the day of receipt and the days that the profile gives its stage. */
+export function explainDueOn(request: {
+  readonly profile: Pick<LaboratoryProfile, 'resultDays' | 'version'>;
+  readonly receivedOn: Day;
+  readonly stage: ResultStage;
+}): Explanation {
+  const { profile, receivedOn, stage } = request;
+  return {
+    rule: 'specimen.result-days',
+    inputs: {
+      stage,
+      receivedOn,
+      days: profile.resultDays[stage],
+      dueOn: dueOn(request),
+      profileVersion: profile.version,
+    },
+  };
 }
 
 export function dueDays(

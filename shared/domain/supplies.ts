@@ -1,7 +1,7 @@
 /**
  * The set-out list for a morning. Kinds follow published supply lists (Curry International TB
- * Center, helpful tips and step 1; Médecins Sans Frontières TB guide, appendix 3); the counts are
- * starting values and the clinic's to change.
+ * Center, helpful tips and step 1; Médecins Sans Frontières TB guide, appendix 3). The counts of a
+ * clinic are its own; what is here are starting values that it takes over and changes.
  */
 
 export const supplyItems = [
@@ -31,29 +31,36 @@ export const supplyItems = [
 ] as const;
 export type SupplyItem = (typeof supplyItems)[number];
 
-export interface SupplyRule {
-  readonly item: SupplyItem;
+export interface SupplyCount {
   readonly perChild: number;
   readonly perMorning: number;
   /** One spare for so many children, rounded up; null has none. */
   readonly childrenPerSpare: number | null;
-  /** Only for children under this age. */
-  readonly underMonths?: number;
+  /** Only for children under this age; null is for all. */
+  readonly underMonths: number | null;
 }
 
-export interface SupplyLine {
+export interface SupplyRule extends SupplyCount {
   readonly item: SupplyItem;
+}
+
+export interface CountedSupply {
   readonly count: number;
   readonly ofWhichSpare: number;
 }
 
-const each = (item: SupplyItem, perChild: number, childrenPerSpare: number | null = null) => ({
+const each = (
+  item: SupplyItem,
+  perChild: number,
+  childrenPerSpare: number | null = null,
+): SupplyRule => ({ item, perChild, perMorning: 0, childrenPerSpare, underMonths: null });
+const once = (item: SupplyItem, perMorning = 1): SupplyRule => ({
   item,
-  perChild,
-  perMorning: 0,
-  childrenPerSpare,
+  perChild: 0,
+  perMorning,
+  childrenPerSpare: null,
+  underMonths: null,
 });
-const once = (item: SupplyItem) => ({ item, perChild: 0, perMorning: 1, childrenPerSpare: null });
 
 export const startingSupplyRules: readonly SupplyRule[] = [
   each('feeding-tube', 1, 2),
@@ -69,8 +76,8 @@ export const startingSupplyRules: readonly SupplyRule[] = [
   // Two staff a child; respirators are kept for the morning, one pair of staff.
   each('gloves-pair', 2, 1),
   each('gown', 2),
-  { item: 'eye-protection', perChild: 0, perMorning: 2, childrenPerSpare: null },
-  { item: 'respirator', perChild: 0, perMorning: 2, childrenPerSpare: 3 },
+  once('eye-protection', 2),
+  { ...once('respirator', 2), childrenPerSpare: 3 },
   each('escort-mask', 1, 2),
   each('holding-wrap', 1),
   each('tissues', 1),
@@ -82,18 +89,18 @@ export const startingSupplyRules: readonly SupplyRule[] = [
   once('door-sign'),
 ];
 
-export function suppliesForMorning(request: {
-  readonly children: readonly { readonly ageMonths: number }[];
-  readonly rules?: readonly SupplyRule[];
-}): SupplyLine[] {
-  const { children, rules = startingSupplyRules } = request;
-  return rules.flatMap((rule): SupplyLine[] => {
+/** What lies ready for these children, spares included; what nobody needs is left out. */
+export function suppliesForMorning<Rule extends SupplyCount>(
+  children: readonly { readonly ageMonths: number }[],
+  rules: readonly Rule[],
+): (Rule & CountedSupply)[] {
+  return rules.flatMap((rule) => {
     const concerned = children.filter(
-      ({ ageMonths }) => rule.underMonths === undefined || ageMonths < rule.underMonths,
+      ({ ageMonths }) => rule.underMonths === null || ageMonths < rule.underMonths,
     ).length;
     if (concerned === 0) return [];
     const spare = rule.childrenPerSpare ? Math.ceil(concerned / rule.childrenPerSpare) : 0;
     const count = concerned * rule.perChild + rule.perMorning + spare;
-    return [{ item: rule.item, count, ofWhichSpare: spare }];
+    return count === 0 ? [] : [{ ...rule, count, ofWhichSpare: spare }];
   });
 }

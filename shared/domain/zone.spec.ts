@@ -1,5 +1,6 @@
 import {
   addDays,
+  compareDays,
   ageOn,
   clockChangeBetween,
   dayOf,
@@ -8,10 +9,15 @@ import {
   isDay,
   localTimeOf,
   minutesOfTime,
+  localPartsOf,
   readings,
   timeOfMinutes,
   validateDay,
   validateTime,
+  validateZone,
+  InvalidDay,
+  InvalidTime,
+  InvalidZone,
   weekdayOf,
 } from './zone';
 
@@ -108,7 +114,61 @@ describe('a wall-clock time in a zone', () => {
   });
 });
 
+describe('the parts of an instant', () => {
+  it('are those of the wall clock', () => {
+    expect(localPartsOf(at('2026-12-09T05:07:00Z'), chicago)).toEqual({
+      on: '2026-12-08',
+      time: '23:07',
+      year: 2026,
+      month: 12,
+      day: 8,
+      weekday: 2,
+      hour: 23,
+      minute: 7,
+    });
+  });
+
+  it('are refused for what is no instant and no zone', () => {
+    expect(() => localPartsOf(Number.NaN, chicago)).toThrow(RangeError);
+    expect(() => localPartsOf(0, 'Nowhere')).toThrow(InvalidZone);
+    expect(validateZone(chicago)).toBe(chicago);
+    expect(() => validateZone('')).toThrow(InvalidZone);
+  });
+
+  it('a change of the clock is looked for forwards', () => {
+    expect(clockChangeBetween(0, 0, chicago)).toBeNull();
+    expect(() => clockChangeBetween(1, 0, chicago)).toThrow('The end comes before the beginning.');
+  });
+});
+
 describe('calendar days', () => {
+  it.each(['2027-12-31x', 'x2027-12-31', '12027-12-31', '2027-12-311'])('%j is not', (day) => {
+    expect(isDay(day)).toBe(false);
+    expect(() => validateDay(day)).toThrow(InvalidDay);
+  });
+
+  it.each(['x06:45', '06:45x', '24:00', '06:60'])('%j is no time', (time) => {
+    expect(() => validateTime(time)).toThrow(InvalidTime);
+  });
+
+  it.each([-1, 1440, 1.5, Number.NaN])('%p is no minute of a day', (minutes) => {
+    expect(() => timeOfMinutes(minutes)).toThrow(InvalidTime);
+  });
+
+  it('are minutes from 00:00 to 23:59', () => {
+    expect(timeOfMinutes(0)).toBe('00:00');
+    expect(timeOfMinutes(1439)).toBe('23:59');
+    expect(isDay('2027-12-31')).toBe(true);
+  });
+
+  it('compare like numbers, the earlier first', () => {
+    expect(['2027-01-01', '2026-12-31', '2026-02-28'].sort(compareDays)).toEqual([
+      '2026-02-28',
+      '2026-12-31',
+      '2027-01-01',
+    ]);
+  });
+
   it.each(['2028-02-29', '2000-02-29', '2027-12-31'])('%s is a day', (day) => {
     expect(validateDay(day)).toBe(day);
   });

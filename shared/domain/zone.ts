@@ -2,11 +2,12 @@
  * The edge between wall clocks and instants, and the only place of the domain that knows zones.
  * Everything else works on instants and minutes.
  */
-import { DateTime, IANAZone, Settings } from 'luxon';
+import { IANAZone } from 'luxon';
 import {
   millisecondsPerMinute,
   validateDay,
   validateTime,
+  weekdayOf,
   type Day,
   type Instant,
   type LocalTime,
@@ -14,14 +15,6 @@ import {
 } from './day';
 
 export * from './day';
-
-declare module 'luxon' {
-  interface TSSettings {
-    throwOnInvalid: true;
-  }
-}
-
-Settings.throwOnInvalid = true;
 
 export class InvalidZone extends RangeError {
   constructor(readonly zone: string) {
@@ -55,8 +48,14 @@ export interface LocalParts {
 }
 
 export function validateZone(zone: string): string {
-  if (!IANAZone.isValidZone(zone)) throw new InvalidZone(zone);
-  return zone;
+  return placeOf(zone).name;
+}
+
+/** Luxon keeps every zone it has met; to ask anew whether one exists costs more than a conversion. */
+function placeOf(zone: string): IANAZone {
+  const place = IANAZone.create(zone);
+  if (!place.isValid) throw new InvalidZone(zone);
+  return place;
 }
 
 /**
@@ -65,16 +64,17 @@ export function validateZone(zone: string): string {
  * after the change (02:30 on 2026-03-08 in Chicago: 03:30 after it, or 01:30 before it).
  */
 export function readings(wallClock: WallClock): Readings {
-  const zone = IANAZone.create(validateZone(wallClock.zone));
+  const zone = placeOf(wallClock.zone);
   const asIfUtc = Date.parse(
     `${validateDay(wallClock.on)}T${validateTime(wallClock.time)}:00.000Z`,
   );
   // No zone has moved its clock twice within a day around one instant; a day on either side
   // therefore holds the offset before and the offset after.
   const dayLong = 24 * 60 * millisecondsPerMinute;
-  const instants = [zone.offset(asIfUtc - dayLong), zone.offset(asIfUtc + dayLong)].map(
-    (offsetMinutes) => asIfUtc - offsetMinutes * millisecondsPerMinute,
-  );
+  const [before, after] = [zone.offset(asIfUtc - dayLong), zone.offset(asIfUtc + dayLong)];
+  const byOffset = (minutes: number): Instant => asIfUtc - minutes * millisecondsPerMinute;
+  if (before === after) return { kind: 'once', earlier: byOffset(before), later: byOffset(after) };
+  const instants = [byOffset(before), byOffset(after)];
   const real = instants.filter(
     (instant) => instant + zone.offset(instant) * millisecondsPerMinute === asIfUtc,
   );
@@ -91,16 +91,19 @@ export function instantOf(wallClock: WallClock, pick: 'earlier' | 'later' = 'lat
 }
 
 export function localPartsOf(instant: Instant, zone: string): LocalParts {
-  const local = DateTime.fromMillis(instant, { zone: validateZone(zone) });
+  const shiftMinutes = placeOf(zone).offset(instant);
+  // The wall clock written as if it were UTC.
+  const shown = new Date(instant + shiftMinutes * millisecondsPerMinute);
+  const [on, time] = [shown.toISOString().slice(0, 10), shown.toISOString().slice(11, 16)];
   return {
-    on: local.toFormat('yyyy-MM-dd'),
-    time: local.toFormat('HH:mm'),
-    year: local.year,
-    month: local.month,
-    day: local.day,
-    weekday: local.weekday,
-    hour: local.hour,
-    minute: local.minute,
+    on,
+    time,
+    year: shown.getUTCFullYear(),
+    month: shown.getUTCMonth() + 1,
+    day: shown.getUTCDate(),
+    weekday: weekdayOf(on),
+    hour: shown.getUTCHours(),
+    minute: shown.getUTCMinutes(),
   };
 }
 
@@ -125,7 +128,7 @@ export function clockChangeBetween(
   until: Instant,
   zone: string,
 ): ClockChange | null {
-  const place = IANAZone.create(validateZone(zone));
+  const place = placeOf(zone);
   if (until < from) throw new RangeError('The end comes before the beginning.');
   const before = place.offset(from);
   const after = place.offset(until);

@@ -1,23 +1,20 @@
 import { readFile } from 'node:fs/promises';
-import { addDays, dayOf, instantOf } from '../../shared/domain/zone';
+import { addDays, instantOf } from '../../shared/domain/zone';
 import { calendarEntries } from './support/calendar-file';
 import { FamilyPhone } from './support/family-phone';
-import { password, zone } from './support/house';
-import { LetterDesk } from './support/letter-desk';
-import {
-  addChild,
-  addOrder,
-  planFirstRun,
-  recordConsent,
-  type Adult,
-  type PlannedMorning,
-} from './support/new-child';
+import { zone } from './support/house';
+import { planFirstRun, type Adult, type PlannedMorning } from './support/new-child';
 import { RehearsalScreen } from './support/rehearsal-screen';
-import { ResultsScreen, type Entry } from './support/results-screen';
-import { SpecimensScreen } from './support/specimens-screen';
 import { expectNeutral, linkIn } from './support/stand-ins';
 import { ThisMorningScreen } from './support/this-morning-screen';
 import { expect, test, toScreen } from './support/walk';
+import {
+  addWithOrder,
+  bringResults,
+  collect,
+  releaseLetter,
+  signAndConsent,
+} from './support/whole-chain';
 
 const mother: Adult = {
   fullName: 'Elif Aksoy',
@@ -60,24 +57,17 @@ test('a child goes through the whole chain, from the order to the opened letter'
 
   const rosa = await people.staff('rosa');
   const okafor = await people.staff('okafor');
+  const desks = { house, rosa, okafor };
   const phone = new FamilyPhone(await people.phone());
   let mornings: readonly PlannedMorning[] = [];
   let household = '';
 
   await test.step('the nurse adds the child with the family, and the order', async () => {
-    await toScreen(rosa, 'Children');
-    await addChild(rosa, child);
-    household = rosa.url();
-    await addOrder(rosa, child);
+    household = await addWithOrder(desks, child);
   });
 
   await test.step('the clinician signs the order, the nurse records the consent', async () => {
-    await toScreen(okafor, 'Orders');
-    await okafor.getByRole('link', { name: child.fullName }).click();
-    await okafor.getByRole('button', { name: 'Sign this order' }).click();
-    await expect(okafor.getByText('Signed by Dr. Ines Okafor')).toBeVisible();
-    await recordConsent(rosa, mother);
-    await expect(rosa.getByText('Signed by Dr. Ines Okafor')).toBeVisible();
+    await signAndConsent(desks, child);
   });
 
   await test.step('three mornings from the first run, with who brings the child', async () => {
@@ -202,49 +192,25 @@ test('a child goes through the whole chain, from the order to the opened letter'
     await answering.answerNothing();
     await expect(answering.heading(/^Come\. Be at Door B/)).toBeVisible();
     await expect(board.said(child.fullName)).toContainText(/nothing since/i);
-    await house.moveTo(instantOf({ on: morning.on, time: morning.arrivalTime, zone }));
-    await board.run(child.fullName, { label: `AS-91${number}`, broughtBy: bringer.fullName });
+    await collect(desks, board, {
+      child,
+      morning,
+      number,
+      broughtBy: bringer.fullName,
+      series: '91',
+    });
     await board.expectNeverReloaded();
-
-    await toScreen(okafor, 'Specimens');
-    await new SpecimensScreen(okafor).toLaboratory(child.fullName, number, `L91${number}`);
   };
   for (const [index, morning] of mornings.entries())
     await test.step(`morning ${index + 1}`, () => wholeMorning(morning, index + 1));
 
   await test.step('preliminary and final results, each final one with a second look', async () => {
-    await house.moveDays(8);
-    await toScreen(rosa, 'Results');
-    const results = new ResultsScreen(rosa, child.fullName);
-    const enter = async (specimen: number, answer: Omit<Entry, 'specimen' | 'reportedOn'>) =>
-      results.enter({ ...answer, specimen, reportedOn: await house.today() });
-    await enter(1, { test: 'Smear', answer: 'No acid-fast bacilli seen', finality: 'final' });
-    await enter(1, { test: 'Amplification', answer: 'Not detected', finality: 'final' });
-    for (const specimen of [1, 2, 3])
-      await enter(specimen, {
-        test: 'Culture',
-        answer: 'No growth so far',
-        finality: 'preliminary',
-      });
-    await house.moveDays(36);
-    await house.awake();
-    for (const specimen of [1, 2, 3])
-      await enter(specimen, {
-        test: 'Culture',
-        answer: 'No growth, culture ended',
-        finality: 'final',
-      });
-    await toScreen(okafor, 'Results');
-    expect(await new ResultsScreen(okafor, child.fullName).confirmAll()).toBe(5);
+    await bringResults(desks, child);
   });
 
   const textsBefore = (await standIns.texts(motherPhone)).length;
   await test.step('the letter that the results allow is signed and released', async () => {
-    await toScreen(okafor, 'Letters');
-    const desk = new LetterDesk(okafor);
-    await desk.open(child.fullName);
-    const nextVisit = addDays(dayOf(await house.now(), zone), 14);
-    await desk.settle({ nextVisit, password });
+    await releaseLetter(desks, child);
   });
 
   await test.step('the family hears that a letter waits, and nothing more', async () => {
@@ -256,25 +222,14 @@ test('a child goes through the whole chain, from the order to the opened letter'
   });
 
   await test.step('the mother reads it with a code, the clinic sees that it was opened', async () => {
-    await expect(phone.heading('Letters')).toBeVisible();
-    const sent = (await standIns.texts(motherPhone)).length;
-    await phone.page.getByRole('button', { name: /^Send me a code.*text/s }).click();
-    const { body } = await standIns.text(motherPhone, /Your code is \d{6}/, sent);
-    expectNeutral(body, secrets);
-    await phone.page.getByLabel('Code with 6 digits').fill(/\d{6}/.exec(body)?.[0] ?? '');
-    await phone.page.getByRole('button', { name: 'Open', exact: true }).click();
-    await phone.page.getByRole('link', { name: /New/ }).click();
-    await expect(phone.page.getByRole('article')).toContainText(
+    expectNeutral(await phone.typeFreshCode(standIns, motherPhone, 'en'), secrets);
+    const opened = await phone.openNewLetter();
+    await expect(opened).toContainText(
       'Deniz can still have tuberculosis. In small children the germ is often not found',
     );
-    await expect(phone.page.getByRole('article')).toContainText(
-      'This test alone does not rule it out.',
-    );
+    await expect(opened).toContainText('This test alone does not rule it out.');
 
-    const ofFamily = await phone.page.request.get(
-      `/api/family/letters/${/\d+$/.exec(phone.page.url())?.[0]}.pdf`,
-    );
-    expect(ofFamily.headers()['content-type']).toContain('application/pdf');
+    expect((await phone.fetchPdf()).subarray(0, 5).toString()).toBe('%PDF-');
 
     await toScreen(okafor, 'Letters');
     const letter = okafor.locator('li.letter').filter({ hasText: child.fullName });

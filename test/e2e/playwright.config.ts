@@ -11,8 +11,11 @@ const isRoot = process.getuid?.() === 0;
 
 export default defineConfig({
   testDir: __dirname,
-  outputDir: join(__dirname, '..', '..', 'test-results'),
+  outputDir: join(__dirname, '..', '..', 'test-results', 'e2e'),
   globalSetup: join(__dirname, '..', 'support', 'e2e-house.mjs'),
+  // Pictures that a person has looked at; a new one is approved by `npm run e2e -- letter-pictures -u`.
+  snapshotPathTemplate: '{testDir}/approved/{arg}{ext}',
+  updateSnapshots: 'none',
   forbidOnly: true,
   retries: 0,
   // One house with one clock that moves forward only: one test after the other.

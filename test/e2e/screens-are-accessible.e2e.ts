@@ -2,32 +2,39 @@ import type { Page } from '@playwright/test';
 import type { LetterList } from '../../shared/contracts/letters';
 import { addDays } from '../../shared/domain/zone';
 import { expectAccessible, settled } from './support/accessible';
-import { FamilyPhone } from './support/family-phone';
 import { password, type Who } from './support/house';
 import { LetterDesk } from './support/letter-desk';
-import {
-  inviteMother,
-  planMornings,
-  prepareFamily,
-  toMorningQuestion,
-} from './support/prepared-family';
+import { say, sayLike } from './support/frame-words';
+import { planMornings, prepareFamily } from './support/prepared-family';
 import { linkIn } from './support/stand-ins';
-import { expect, test, toScreen } from './support/walk';
+import { ThisMorningScreen } from './support/this-morning-screen';
+import { expectBigTargets } from './support/targets';
+import { expect, signIn, test, toScreen, type People } from './support/walk';
 
-const menu = (page: Page) => page.getByRole('navigation', { name: 'Screens' });
+const menu = (page: Page) => page.getByRole('navigation', { name: say(page, 'Screens') });
 
-/** Every screen of this person's menu. */
-async function checkMenu(page: Page): Promise<void> {
+/** Every screen of this person's menu, whatever the language of the page. */
+async function checkMenu(page: Page, check: (screen: string) => Promise<void>): Promise<void> {
   const words = await menu(page).getByRole('link').allInnerTexts();
   expect(words.length).toBeGreaterThan(0);
   for (const word of words) {
-    await toScreen(page, word);
-    await expect(menu(page).getByRole('link', { name: word, exact: true })).toHaveAttribute(
-      'aria-current',
-      'page',
-    );
-    await expectAccessible(page, word);
+    const link = menu(page).getByRole('link', { name: word, exact: true });
+    await link.click();
+    await expect(link).toHaveAttribute('aria-current', 'page');
+    await check(word);
   }
+}
+
+/** Somebody at work with fingers and gloves, in Spanish; both grow words and sizes. */
+async function onTouchScreen(people: People, who: Who): Promise<Page> {
+  const page = await people.phone({ viewport: { width: 1024, height: 768 } });
+  await signIn(page, who, 'es');
+  return page;
+}
+
+async function checkTouch(page: Page, screen: string): Promise<void> {
+  await expectAccessible(page, `${screen}, in Spanish`, { byNight: false });
+  await expectBigTargets(page, screen);
 }
 
 test('public pages and doors', async ({ people, clean }) => {
@@ -37,13 +44,13 @@ test('public pages and doors', async ({ people, clean }) => {
   for (const address of [
     '/',
     '/sheet/en',
+    '/sheet/es',
+    '/sheet/ar',
     '/clinic/en/sign-in',
     '/clinic/en/join/not-a-real-token',
+    '/clinic/es/sign-in',
+    '/clinic/es/join/not-a-real-token',
   ]) {
-    await page.goto(address);
-    await expectAccessible(page, address);
-  }
-  for (const address of ['/en/code', '/en/i/not-a-link-that-we-know', '/en/nowhere']) {
     await page.goto(address);
     await expectAccessible(page, address);
   }
@@ -52,105 +59,68 @@ test('public pages and doors', async ({ people, clean }) => {
 for (const who of ['rosa', 'okafor', 'milan', 'hanna'] satisfies Who[])
   test(`every screen in the menu of ${who}`, async ({ people }) => {
     test.setTimeout(150_000);
-    await checkMenu(await people.staff(who));
+    const page = await people.staff(who);
+    await checkMenu(page, (screen) => expectAccessible(page, screen));
   });
 
-test('the screens behind the menu', async ({ house, people }) => {
-  test.setTimeout(150_000);
-  await house.awake();
-  const family = await prepareFamily(house, {
-    fullName: 'Sanna Reyes',
-    callMe: 'Sanna',
-    phone: '+13125550145',
+for (const who of ['okafor', 'milan'] satisfies Who[])
+  test(`every screen in the menu of ${who}, in Spanish on a touch screen`, async ({ people }) => {
+    test.setTimeout(150_000);
+    const page = await onTouchScreen(people, who);
+    await checkMenu(page, (screen) => checkTouch(page, screen));
   });
-  const okafor = await people.staff('okafor');
-  const check = async (address: string, prepare?: () => Promise<void>): Promise<void> => {
-    await okafor.goto(`/clinic/en/${address}`);
-    await settled(okafor);
-    await prepare?.();
-    await expectAccessible(okafor, address);
-  };
-  await check('children/new', async () => {
-    await okafor.getByRole('button', { name: 'Keep this child' }).click();
-    // A field with a fault has colours of its own under the pointer.
-    await okafor.getByLabel('Full name').hover();
+
+for (const { language, ...names } of [
+  { language: 'en', fullName: 'Sanna Reyes', callMe: 'Sanna', phone: '+13125550145' },
+  { language: 'es', fullName: 'Nadia Sorel', callMe: 'Nadia', phone: '+13125550156' },
+] as const)
+  test(`the screens behind the menu, in ${language}`, async ({ house, people }) => {
+    test.setTimeout(150_000);
+    await house.awake();
+    const family = await prepareFamily(house, names);
+    const isTouch = language === 'es';
+    const okafor = isTouch ? await onTouchScreen(people, 'okafor') : await people.staff('okafor');
+    const press = (word: string): Promise<void> =>
+      okafor
+        .getByRole('button', { name: say(okafor, word) })
+        .first()
+        .click();
+    const check = async (address: string, prepare?: () => Promise<void>): Promise<void> => {
+      await okafor.goto(`/clinic/${language}/${address}`);
+      await settled(okafor);
+      await prepare?.();
+      await (isTouch ? checkTouch(okafor, address) : expectAccessible(okafor, address));
+    };
+    await check('children/new', async () => {
+      await press('Keep this child');
+      // A field with a fault has colours of its own under the pointer.
+      await okafor.getByLabel(say(okafor, 'Full name')).hover();
+    });
+    await check(`children/${family.childId}`);
+    await check(`children/${family.childId}/family-members/new`);
+    await check(`orders/new?child=${family.childId}`, () => press('Keep this order'));
+    await check(`orders/${family.orderId}`);
+    await check(`series/plan?orders=${family.orderId}`, async () => {
+      await okafor.getByRole('radio').first().check();
+      await expect(okafor.getByRole('heading', { name: family.fullName })).toBeVisible();
+    });
+    await check('results', () => press('Enter a result'));
+    const { letters } = await house.get<LetterList>('/api/clinic/letters');
+    await check(`letters/${letters[0]?.seriesId}`, () => press('Sign and release'));
+    await check('nowhere');
+
+    const { arrivalAt } = await planMornings(house, family);
+    await house.moveTo(arrivalAt);
+    await check('this-morning', async () => {
+      const row = new ThisMorningScreen(okafor).row(family.fullName);
+      const act = (word: string) =>
+        row.getByRole('button', { name: sayLike(okafor, word) }).click();
+      await act('Arrived');
+      await act('Door check');
+      await act('Keep this door check');
+      await expect(row.locator('.field-says').filter({ hasText: /./ }).first()).toBeVisible();
+    });
   });
-  await check(`children/${family.childId}`);
-  await check(`children/${family.childId}/family-members/new`);
-  await check(`orders/new?child=${family.childId}`, () =>
-    okafor.getByRole('button', { name: 'Keep this order' }).click(),
-  );
-  await check(`orders/${family.orderId}`);
-  await check(`series/plan?orders=${family.orderId}`, async () => {
-    await okafor.getByRole('radio').first().check();
-    await expect(okafor.getByRole('heading', { name: family.fullName })).toBeVisible();
-  });
-  await check('results', () =>
-    okafor.getByRole('button', { name: 'Enter a result' }).first().click(),
-  );
-  const { letters } = await house.get<LetterList>('/api/clinic/letters');
-  await check(`letters/${letters[0]?.seriesId}`, () =>
-    okafor.getByRole('button', { name: 'Sign and release' }).click(),
-  );
-  await check('nowhere');
-});
-
-test('the family’s pages, the night before and in the morning', async ({
-  house,
-  people,
-  clean,
-}) => {
-  test.setTimeout(150_000);
-  clean.expecting(/status of 422/);
-  await house.awake();
-  const family = await prepareFamily(house, {
-    fullName: 'Emre Solberg',
-    callMe: 'Emre',
-    phone: '+13125550189',
-  });
-  const morning = await planMornings(house, family);
-  const invitation = await inviteMother(house, family);
-  const page = await people.phone();
-  const mother = new FamilyPhone(page);
-
-  await page.goto(invitation);
-  await expectAccessible(page, 'arrive');
-  await mother.typeBirthDate(addDays(family.bornOn, 1));
-  await page.getByRole('button', { name: 'Open my visit' }).click();
-  await expect(page.getByText(/You can try 4 more times/)).toBeVisible();
-  await expectAccessible(page, 'arrive, wrong birth date');
-  await mother.arrive(invitation, family.bornOn);
-  await expectAccessible(page, 'next morning');
-  await page.goto('/en/calendar');
-  await expectAccessible(page, 'calendar');
-  await page.goto('/en/interpreter');
-  await expectAccessible(page, 'interpreter');
-  await page.goto('/en/morning');
-  await expectAccessible(page, 'question, not open yet');
-
-  await page.goto(await toMorningQuestion(house, family, morning));
-  await expect(mother.heading(/eat or drink/)).toBeVisible();
-  await expectAccessible(page, 'question');
-  await page.getByRole('button', { name: 'Milk or food' }).click();
-  await expectAccessible(page, 'when');
-  for (const step of ['other', 'ill', 'late', 'not-coming']) {
-    await page.goto(`/en/morning?step=${step}`);
-    await expectAccessible(page, `question, ${step}`);
-  }
-  await page.goto('/en/morning');
-  await mother.answerNothing();
-  await expect(mother.heading(/^Come/)).toBeVisible();
-  await expectAccessible(page, 'outcome');
-  await page.goto('/en/');
-  await expectAccessible(page, 'next morning, in the morning');
-
-  const kofi = await people.staff('kofi');
-  const row = kofi.locator('ol.rows > li').filter({ hasText: family.fullName });
-  await row.getByRole('button', { name: /^Arrived/ }).click();
-  await row.getByRole('button', { name: /^Door check/ }).click();
-  await row.getByRole('button', { name: 'Keep this door check' }).click();
-  await expectAccessible(kofi, 'this morning, door check');
-});
 
 test('the family’s letters', async ({ house, people, clean }) => {
   // Nobody is signed in when the link in the text is opened.

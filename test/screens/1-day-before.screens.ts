@@ -7,7 +7,7 @@ import { Album } from './support/album';
 import { altered, broken, emptied, silent, unreached } from './support/answers';
 import { FamilyVoice, linkOf, readIn } from './support/families';
 import { clinicGroup, clinicGroups } from './support/clinic-screens';
-import { languagesOf, schemes, viewsOf, widths } from './support/views';
+import { handAndDesk, languagesOf, schemes, viewsOf, widths, zoomed } from './support/views';
 
 const parwin = { phone: '+13125550111', child: 'Noor Rahimi' };
 const salma = { phone: '+13125550121', child: 'Idris Haddad' };
@@ -95,13 +95,23 @@ test('the night before, two children', async ({ browser }) => {
       await album.shoot({ name: 'next-morning-two', address: home });
       await album.shoot({ name: 'next-morning-print', address: home, media: 'print' });
       await album.shoot({ name: 'forced-colors', address: home, hasForcedColors: true });
+      await album.shoot({ name: 'text-200', address: home, textSize: 2 });
+      await album.shoot({ name: 'zoom-400', address: home, views: zoomed });
       await album.shoot({ name: 'question-too-early', address: (l) => `/${l}/morning` });
       await album.shoot({ name: 'calendar', address: (l) => `/${l}/calendar` });
       await album.shoot({ name: 'letters-code', address: (l) => `/${l}/letters` });
       await album.shoot({ name: 'interpreter', address: (l) => `/${l}/interpreter` });
-      await album.both((context) => unreached(context, '**/api/family/**'));
-      await album.shoot({ name: 'offline', address: home });
-      await album.both((context) => context.unrouteAll());
+      // What was kept is in the language of the visit before: each language is opened with signal first.
+      await album.shoot({
+        name: 'offline',
+        address: home,
+        prepare: async (page) => {
+          await unreached(page.context(), '**/api/family/**');
+          await page.reload();
+          await page.locator('.kept').waitFor();
+          await page.context().unrouteAll();
+        },
+      });
     },
   );
 
@@ -109,6 +119,12 @@ test('the night before, two children', async ({ browser }) => {
     browser,
     { group: 'family-trouble', languages: family, cookies, speak },
     async (album) => {
+      await album.both((context) => silent(context, '**/api/family/next-morning'));
+      await album.shoot({ name: 'loading', address: home, isWaiting: true });
+      await album.both((context) => context.unrouteAll());
+      await album.both((context) => unreached(context, '**/api/family/next-morning'));
+      await album.shoot({ name: 'unreached', address: home });
+      await album.both((context) => context.unrouteAll());
       await album.both((context) => broken(context, '**/api/family/next-morning'));
       await album.shoot({ name: 'error', address: home });
       await album.both((context) => context.unrouteAll());
@@ -201,14 +217,19 @@ test('the clinic with nothing in it, with a fault, and while it waits', async ({
         await album.shoot({ name: `${matter}-empty`, address: (l) => `/clinic/${l}/${matter}` });
         await album.both((context) => context.unrouteAll());
       }
-      await album.both((context) => broken(context, '**/api/clinic/specimens*'));
-      await album.shoot({ name: 'specimens-fault', address: (l) => `/clinic/${l}/specimens` });
-      await album.both((context) => silent(context, '**/api/clinic/orders*'));
-      await album.shoot({
-        name: 'orders-waiting',
-        address: (l) => `/clinic/${l}/orders`,
-        isWaiting: true,
-      });
+      for (const matter of [...matters, 'this-morning']) {
+        const address = (language: string): string => `/clinic/${language}/${matter}`;
+        const faults = [
+          { name: 'fault', meet: broken, isWaiting: false },
+          { name: 'unreached', meet: unreached, isWaiting: false },
+          { name: 'waiting', meet: silent, isWaiting: true },
+        ];
+        for (const { name, meet, isWaiting } of faults) {
+          await album.both((context) => meet(context, `**/api/clinic/${matter}*`));
+          await album.shoot({ name: `${matter}-${name}`, address, isWaiting, views: handAndDesk });
+          await album.both((context) => context.unrouteAll());
+        }
+      }
     },
   );
 });

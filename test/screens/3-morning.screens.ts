@@ -3,7 +3,7 @@ import { House } from '../e2e/support/house';
 import { ThisMorningScreen } from '../e2e/support/this-morning-screen';
 import { test } from '../e2e/support/walk';
 import { Album } from './support/album';
-import { languagesOf } from './support/views';
+import { inHand, languagesOf, zoomed } from './support/views';
 
 const clinic = languagesOf('clinic');
 const minute = 60_000;
@@ -60,8 +60,19 @@ test('this morning', async ({ browser, people }) => {
       await form.getByLabel('Volume, mL').fill('6.5');
       await form.getByRole('button', { name: 'Keep: collected' }).click();
       await album.shoot({ name: 'collected', address });
+      await album.shoot({ name: 'text-200', address, textSize: 2, views: inHand });
+      await album.shoot({ name: 'zoom-400', address, views: zoomed });
       await album.shoot({ name: 'print', address, media: 'print' });
-      await album.shoot({ name: 'calls', address: (language) => `/clinic/${language}/calls` });
+      const calls = (language: string): string => `/clinic/${language}/calls`;
+      await album.shoot({ name: 'calls', address: calls });
+      await album.shoot({ name: 'calls-forced-colors', address: calls, hasForcedColors: true });
+      await album.shoot({
+        name: 'calls-text-200',
+        address: calls,
+        textSize: 2,
+        views: inHand,
+      });
+      await album.shoot({ name: 'calls-print', address: calls, media: 'print' });
     },
   );
   await house.close();

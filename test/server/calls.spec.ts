@@ -1,6 +1,8 @@
 import { callList } from '../../shared/contracts/calls';
 import { inTransaction, select } from '../../server/database/connection';
+import { callInstead } from '../../server/calls/call-instead';
 import { closeCalls, raiseCall, type NewCall } from '../../server/calls/calls';
+import { closeNeedlessCalls } from '../../server/calls/needless-calls';
 import { raiseUnansweredCalls } from '../../server/calls/unanswered-calls';
 import { insert } from '../support/insert';
 import { addNight, localInstant, nightOn, signWords, type NightFamily } from '../support/night';
@@ -70,9 +72,10 @@ describe('who may not', () => {
     const other = await insert(server.context.db, 'sites', {
       ...(
         await select<Record<string, unknown>>(server.context.db, 'SELECT * FROM sites LIMIT 1')
-      ).map(({ id: _, clinic_weekdays, ...site }) => ({
+      ).map(({ id: _, clinic_weekdays, dawn_languages, ...site }) => ({
         ...site,
         clinic_weekdays: JSON.stringify(clinic_weekdays),
+        dawn_languages: JSON.stringify(dawn_languages),
       }))[0],
     });
     await server.context.db.query(`UPDATE households SET site_id = ${other}`);
@@ -272,4 +275,77 @@ describe('mornings without an answer', () => {
     expect(await raiseUnansweredCalls(server.context)).toBe(0);
     expect(await open()).toEqual([]);
   });
+});
+
+describe('a call that the data make needless', () => {
+  const open = async (): Promise<string[]> =>
+    (
+      await select<{ reason: string }>(
+        server.context.db,
+        'SELECT reason FROM call_tasks WHERE done_at IS NULL ORDER BY id',
+      )
+    ).map(({ reason }) => reason);
+  const reason = 'evening-text-failed';
+  const raiseAbout = async (): Promise<NightFamily> => {
+    server.setNow(localInstant('2026-12-08', '19:00'));
+    const night = await addNight(server);
+    await inTransaction(server.context.db, (transaction) =>
+      callInstead(server.context)(transaction, {
+        ...{ id: 1, callReason: reason, householdId: night.householdId, morningOn: nightOn },
+        familyMemberId: night.memberIds[0] ?? null,
+      }),
+    );
+    return night;
+  };
+
+  test('knows its child and morning, and stays while nothing changed', async () => {
+    const { childIds, morningIds } = await raiseAbout();
+    expect(await closeNeedlessCalls(server.context)).toBe(0);
+    const [row] = await select<{ child_id: number; morning_id: number }>(
+      server.context.db,
+      `SELECT child_id, morning_id FROM call_tasks WHERE reason = '${reason}'`,
+    );
+    expect(row).toEqual({ child_id: childIds[0], morning_id: morningIds[0] });
+  });
+
+  test('comes off when the family has answered', async () => {
+    const { morningIds } = await raiseAbout();
+    await insert(server.context.db, 'fasting_checks', {
+      ...{ morning_id: morningIds[0], source: 'web', submission_key: 'k', answer: 'nothing' },
+      ...{ outcome: 'come', said: '{}', language: 'en', received_at: new Date() },
+    });
+    expect(await closeNeedlessCalls(server.context)).toBe(1);
+    expect(await open()).not.toContain(reason);
+  });
+
+  test('stays when the family only runs late', async () => {
+    const { morningIds } = await raiseAbout();
+    await insert(server.context.db, 'fasting_checks', {
+      ...{ morning_id: morningIds[0], source: 'web', submission_key: 'k', answer: 'late' },
+      ...{ outcome: 'come', said: '{}', language: 'en', received_at: new Date() },
+    });
+    expect(await closeNeedlessCalls(server.context)).toBe(0);
+  });
+
+  test('comes off when the morning is over or was lost, not while somebody is calling', async () => {
+    await raiseAbout();
+    await server.context.db.query(`UPDATE mornings SET state = 'lost'`);
+    await server.context.db.query('UPDATE call_tasks SET claimed_by_staff_id = 1');
+    expect(await closeNeedlessCalls(server.context)).toBe(0);
+    await server.context.db.query('UPDATE call_tasks SET claimed_by_staff_id = NULL');
+    expect(await closeNeedlessCalls(server.context)).toBe(1);
+  });
+});
+
+test('calls of one morning, person or household are found without reading every call there ever was', async () => {
+  const keyOf = async (where: string): Promise<string | null | undefined> =>
+    (
+      await select<{ possible_keys: string | null }>(
+        server.context.db,
+        `EXPLAIN SELECT id FROM call_tasks WHERE ${where}`,
+      )
+    )[0]?.possible_keys;
+  expect(await keyOf("morning_id = 1 AND reason = 'not-answered'")).toBe('call_tasks_morning');
+  expect(await keyOf('family_member_id = 1 AND series_id = 1')).toBe('call_tasks_member');
+  expect(await keyOf('household_id = 1 AND claimed_by_staff_id = 1')).toBe('call_tasks_household');
 });

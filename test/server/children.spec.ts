@@ -42,7 +42,7 @@ describe('nobody without the right', () => {
     const notOwn = await outreach.get(`/api/clinic/children/${body.id}`).expect(404);
     await change(
       server.context.db,
-      'INSERT INTO sites SELECT id + 1000, name, short_name, zone, country, region, address, door, door_directions, phone, emergency_number, dawn_answers_from_time, dawn_answers_until_time, clinic_weekdays, arrivals_from_time, arrivals_until_time, minutes_per_child, places_per_morning, staff_pairs, lead_days, usual_wait_minutes, evening_text_time, morning_question_minutes_before, call_list_minutes_before FROM sites',
+      'INSERT INTO sites (id, name, short_name, zone, country, region, address, door, door_directions, phone, emergency_number, dawn_answers_from_time, dawn_answers_until_time, clinic_weekdays, arrivals_from_time, arrivals_until_time, minutes_per_child, places_per_morning, staff_pairs, lead_days, usual_wait_minutes, evening_text_time, morning_question_minutes_before, call_list_minutes_before) SELECT id + 1000, name, short_name, zone, country, region, address, door, door_directions, phone, emergency_number, dawn_answers_from_time, dawn_answers_until_time, clinic_weekdays, arrivals_from_time, arrivals_until_time, minutes_per_child, places_per_morning, staff_pairs, lead_days, usual_wait_minutes, evening_text_time, morning_question_minutes_before, call_list_minutes_before FROM sites',
     );
     await change(server.context.db, 'UPDATE households SET site_id = site_id + 1000');
     const elsewhere = await nurse.get(`/api/clinic/children/${body.id}`).expect(404);

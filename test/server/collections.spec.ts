@@ -1,6 +1,7 @@
 import { morningChanged, thisMorning } from '../../shared/contracts/this-morning';
 import { problem } from '../../shared/contracts/problem';
 import { select } from '../../server/database/connection';
+import { insert } from '../support/insert';
 import { startTestServer, type Agent, type TestServer } from '../support/server';
 import {
   addClinic,
@@ -127,15 +128,21 @@ describe('refused', () => {
 
   it('a morning that does not exist, and one of another site, with the same answer', async () => {
     const missing = await post('999999/arrival', { version: 1 }).expect(404);
-    await server.context.db.query(
-      `INSERT INTO sites SELECT NULL, 'Other', 'Other', zone, country, region, address, door, door_directions, phone,
-         emergency_number, dawn_answers_from_time, dawn_answers_until_time, clinic_weekdays, arrivals_from_time,
-         arrivals_until_time, minutes_per_child, places_per_morning, staff_pairs, lead_days, usual_wait_minutes,
-         evening_text_time, morning_question_minutes_before, call_list_minutes_before FROM sites LIMIT 1`,
+    const [{ id: _, ...site } = { id: 0 }] = await select<{ id: number }>(
+      server.context.db,
+      'SELECT * FROM sites LIMIT 1',
     );
-    await server.context.db.query(
-      `UPDATE mornings SET site_id = (SELECT MAX(id) FROM sites) WHERE id = ${yusuf}`,
+    const otherId = await insert(
+      server.context.db,
+      'sites',
+      Object.fromEntries(
+        Object.entries({ ...site, name: 'Other' }).map(([column, value]: [string, unknown]) => [
+          column,
+          Array.isArray(value) ? JSON.stringify(value) : value,
+        ]),
+      ),
     );
+    await server.context.db.query(`UPDATE mornings SET site_id = ${otherId} WHERE id = ${yusuf}`);
     const foreign = await post(`${yusuf}/arrival`, { version: 1 }).expect(404);
     expect(foreign.body).toEqual(missing.body);
   });
@@ -357,6 +364,70 @@ describe('door check', () => {
       'longest-fast-passed',
     );
   });
+
+  it('past the longest fast goes on by a clinician’s reason alone, which is kept', async () => {
+    const { version } = await arrive(maryam);
+    const supper = { lastFoodAt: iso('22:00', '2027-04-12'), isNothingSincePlan: false };
+    const checked = await check(maryam, version, supper);
+    const with_ = (ceilingReason: string, agent = nurse) =>
+      post(
+        `${maryam}/collection`,
+        { version: checked.version, roomId: clinic.roomIds[0], ceilingReason },
+        agent,
+      );
+    expect(codeOf((await with_('last try').expect(403)).body)).toBe('clinician-decides');
+    const clinician = await server.signInStaff('clinician');
+    expect(codeOf((await with_(' ', clinician).expect(409)).body)).toBe('longest-fast-passed');
+    await with_('glucose 92, last specimen', clinician).expect(200);
+    const [kept] = await select<{ ceiling_reason: string }>(
+      server.context.db,
+      'SELECT ceiling_reason FROM collections',
+    );
+    expect(kept?.ceiling_reason).toBe('glucose 92, last specimen');
+  });
+
+  it('a reason for too short a fast is none for too long a one', async () => {
+    const clinician = await server.signInStaff('clinician');
+    const { version } = await arrive(maryam);
+    const early = {
+      lastFoodAt: iso('03:30'),
+      isNothingSincePlan: false,
+      goOnReason: 'half an hour',
+    };
+    const answer = await post(`${maryam}/door-checks`, doorCheck(version, early), clinician);
+    const { row } = morningChanged.parse(answer.body);
+    server.setNow(at('11:40'));
+    expect(codeOf((await begin(maryam, row.version).expect(409)).body)).toBe('longest-fast-passed');
+  });
+
+  it('tells a sip of water from a meal: the least hours begin again, the longest fast does not', async () => {
+    const { version } = await arrive(maryam);
+    const sip = { lastDrinkAt: iso('05:00'), drinkItem: 'water', isNothingSincePlan: false };
+    const sipped = await check(maryam, version, { ...sip, bloodGlucoseMgDl: 88 });
+    expect(sipped).toMatchObject({
+      verdict: 'not-long-enough',
+      readyAt: iso('09:00'),
+      bar: { leastAt: iso('09:00'), longestAt: iso('11:00') },
+    });
+    expect(sipped.doorCheck?.says).toContain('Water at 05:00');
+    expect(sipped.doorCheck?.says).toContain('blood glucose 88 mg/dL');
+    const milk = { lastFoodAt: iso('05:00'), foodItem: 'formula', isNothingSincePlan: false };
+    const fed = await check(maryam, sipped.version, milk);
+    expect(fed.bar).toMatchObject({ leastAt: iso('09:00'), longestAt: iso('13:00') });
+    expect(fed.explains).toEqual([
+      expect.objectContaining({
+        rule: 'fasting-plan.protocol',
+        says: expect.stringMatching(
+          /^Plan: nothing from 03:00, 4 h 00 min before the arrival at 07:00; longest fast 8 h 00 min\. .*version 3/,
+        ) as unknown,
+      }),
+      {
+        rule: 'door-check.not-long-enough',
+        inputs: expect.objectContaining({ foodItem: 'formula', readyAt: at('09:00') }) as unknown,
+        says: 'Fast: formula at 05:00. Least hours over only at 09:00; hungry since 05:00, longest fast at 13:00.',
+      },
+    ]);
+  });
 });
 
 describe('collection', () => {
@@ -364,10 +435,15 @@ describe('collection', () => {
     const { version } = await arrive(maryam);
     expect(codeOf((await begin(maryam, version).expect(409)).body)).toBe('door-check-first');
     const checked = await check(maryam, version);
-    expect((await sheet()).suggestion).toEqual({
+    expect((await sheet()).suggestion).toMatchObject({
       morningId: maryam,
       roomId: clinic.roomIds[0],
       says: 'Next: Maryam, Room 1. Here, checked and fasted long enough.',
+      explains: {
+        rule: 'order-of-morning.only-one-ready',
+        inputs: { waiting: 1, ready: 1, minutesLeft: 235 },
+        says: '1 of 1 waiting children can be collected now. Here, checked and fasted long enough; 3 h 55 min to its longest fast.',
+      },
     });
     const begun = morningChanged.parse((await begin(maryam, checked.version).expect(200)).body);
     expect([begun.row.state, begun.warnings]).toEqual(['collecting', []]);

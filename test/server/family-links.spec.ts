@@ -4,6 +4,7 @@ import { problem } from '../../shared/contracts/problem';
 import { issueHouseholdLink, issueInvitation } from '../../server/auth/links';
 import { hashToken } from '../../server/auth/token-hash';
 import { change, inTransaction, select } from '../../server/database/connection';
+import { seedWording } from '../../server/wording/seed-wording';
 import { addFamily } from '../support/family';
 import type { TestFamily } from '../support/family';
 import { signedCookie, startTestServer } from '../support/server';
@@ -94,6 +95,24 @@ describe('refused', () => {
     const described = await describeLink(server.visitor(), token);
     expect(described).toMatchObject({ state: 'unknown', needs: 'birth-date' });
     expect(codeOf((await open(server.visitor(), token).expect(404)).body)).toBe('link-unknown');
+  });
+
+  it('unknown links, in the language of the page', async () => {
+    for (const language of ['en', 'es', 'ar'] as const)
+      await seedWording(server.context.db, { language, now: Date.now() });
+    const token = 'unknown-unknown-unknown';
+    const told = async (language: string): Promise<string> => {
+      const answer = await server
+        .visitor()
+        .post('/api/family/links/describe')
+        .set('Accept-Language', language)
+        .send({ token })
+        .expect(200);
+      return (answer.body as { clinic: { phoneSays: string } }).clinic.phoneSays;
+    };
+    expect(await told('ar')).toMatch(/ممرضة/);
+    expect(await told('es')).toMatch(/enfermera/);
+    expect(await told('xx')).toMatch(/nurse/);
   });
 });
 

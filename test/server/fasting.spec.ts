@@ -521,7 +521,8 @@ describe('a change', () => {
     const outcome = morningOutcome.parse(await tell({ kind: 'late', newArrivalAt: iso('09:00') }));
     expect(outcome.kind).toBe('feed-now-and-call');
     expect(outcome.heading).toContain('Feed Nahom now');
-    expect(await openCalls()).toEqual(['feed-now-and-call']);
+    // This household was made at dawn: no evening text has told it anything.
+    expect(await openCalls()).toEqual(['feed-now-and-call', 'evening-too-late']);
   });
 
   it('a new time that is none', async () => {

@@ -52,10 +52,11 @@ describe('an invitation', () => {
     const nurse = await server.signInStaff('nurse-coordinator');
     const missing = await nurse.post(path(999_999)).expect(404);
     const [site] = await select<Record<string, unknown>>(server.context.db, 'SELECT * FROM sites');
-    const { id: _, clinic_weekdays, ...columns } = site ?? {};
+    const { id: _, clinic_weekdays, dawn_languages, ...columns } = site ?? {};
     const otherSite = await insert(server.context.db, 'sites', {
       ...columns,
       clinic_weekdays: JSON.stringify(clinic_weekdays),
+      dawn_languages: JSON.stringify(dawn_languages),
     });
     await change(server.context.db, 'UPDATE households SET site_id = :otherSite', { otherSite });
     const foreign = await nurse.post(path(id)).expect(404);
@@ -147,6 +148,7 @@ describe('the list of messages', () => {
       .expect(200);
     const list = messageList.parse(body);
     expect(list.messages.map(({ kind, stateSays }) => [kind, stateSays])).toEqual([
+      ['nudge', 'Waits for its time.'],
       ['morning', 'Waits for its time.'],
       ['evening', 'Waits for its time.'],
       ['code', 'On its way.'],
@@ -158,6 +160,119 @@ describe('the list of messages', () => {
       `SELECT matter FROM access_records WHERE matter = 'messages'`,
     );
     expect(seen).toHaveLength(1);
+  });
+});
+
+describe('what failed', () => {
+  const failed = async (more: Record<string, unknown> = {}): Promise<number> => {
+    const family = await addNight(server, { members: [{ texts: 'day', phone: '+12065550150' }] });
+    const at = server.context.clock.now();
+    return insert(server.context.db, 'messages', {
+      ...{ dedupe_key: `evening:${Math.random()}`, kind: 'evening', channel: 'sms' },
+      ...{ household_id: family.householdId, family_member_id: family.memberIds[0] },
+      ...{ address: '+12065550150', language: 'en', wording_versions: '{}', body: 'Visit.' },
+      ...{ due_at: new Date(at - 60_000), next_try_at: new Date(at), created_at: new Date(at) },
+      ...{ last_useful_at: new Date(at + 3_600_000), state: 'failed', failure_code: '30005' },
+      ...{ failure_says: 'This number is unknown or no longer in use.', ended_at: new Date(at) },
+      ...more,
+    });
+  };
+  const retry = (id: number): string => `/api/clinic/messages/${id}/retries`;
+
+  test('is not sent again by strangers, wrong roles, other sites', async () => {
+    const id = await failed();
+    await server.visitor().post(retry(id)).expect(401);
+    await (await server.signInStaff('language-reviewer')).post(retry(id)).expect(403);
+    await (await server.signInStaff('outreach-nurse')).post(retry(id)).expect(404);
+    await (await server.signInStaff('front-desk')).post(retry(999_999)).expect(404);
+  });
+
+  test('is told in plain words, with the time, the cost and the child', async () => {
+    const id = await failed();
+    const desk = await server.signInStaff('front-desk');
+    const { body } = await desk.get('/api/clinic/messages?show=failed').expect(200);
+    const list = messageList.parse(body);
+    expect(list.total).toBe(1);
+    expect(list.messages[0]).toMatchObject({
+      ...{ id, kindSays: 'Evening text', segments: 1, mayRetry: true },
+      stateSays: 'It did not arrive. This number is unknown or no longer in use.',
+      failedAt: new Date(server.context.clock.now()).toISOString(),
+    });
+    expect(list.messages[0]?.childId).not.toBeNull();
+    expect(list.health).toMatchObject({ failures: 1, isStuck: false });
+    expect(list.health.says).toContain('1 message did not arrive in the last day');
+    for (const query of ['show=waiting', 'show=sent', 'channel=mail'])
+      expect((await desk.get(`/api/clinic/messages?${query}`)).body.messages).toEqual([]);
+    await desk.get('/api/clinic/messages?show=lost').expect(422);
+  });
+
+  test('about a letter goes only to who agreed to hear of letters', async () => {
+    const id = await failed({ kind: 'letter-waits' });
+    await server.context.db.query('UPDATE contact_consents SET covers_letters = FALSE');
+    const desk = await server.signInStaff('front-desk');
+    const { body } = await desk.post(retry(id)).expect(409);
+    expect(body.code).toBe('may-not-be-written');
+  });
+
+  test('is queued once for two presses', async () => {
+    const id = await failed();
+    const desk = await server.signInStaff('front-desk');
+    await desk.post(retry(id)).expect(200);
+    await desk.post(retry(id)).expect(200);
+    expect((await rows()).map(({ state }) => state)).toEqual(['queued']);
+    const [noted] = await select<{ matter: string }>(
+      server.context.db,
+      `SELECT matter FROM access_records WHERE action = 'changed' ORDER BY id DESC`,
+    );
+    expect(noted?.matter).toBe('messages');
+  });
+
+  test.each([
+    ['what was delivered', { state: 'delivered' }, 'not-failed'],
+    ['what is of no use any more', { last_useful_at: new Date(0) }, 'too-late'],
+    ['to a number that is another one now', { address: '+12065550151' }, 'may-not-be-written'],
+  ])('is not queued: %s', async (_, more, code) => {
+    const id = await failed(more);
+    const desk = await server.signInStaff('front-desk');
+    expect((await desk.post(retry(id)).expect(409)).body.code).toBe(code);
+  });
+
+  test('is not queued: to who opted out, in the quiet hours, or in the place of a newer one', async () => {
+    const id = await failed();
+    const desk = await server.signInStaff('front-desk');
+    await insert(server.context.db, 'opt_outs', {
+      ...{ channel: 'sms', address: '+12065550150', said: 'STOP', since_at: new Date(0) },
+    });
+    expect((await desk.post(retry(id)).expect(409)).body.code).toBe('may-not-be-written');
+    await change(server.context.db, 'UPDATE opt_outs SET ended_at = since_at');
+    server.setNow(localInstant('2026-12-07', '21:30'));
+    await change(server.context.db, 'UPDATE messages SET last_useful_at = :at', {
+      at: new Date(localInstant('2026-12-07', '23:00')),
+    });
+    expect((await desk.post(retry(id)).expect(409)).body.code).toBe('quiet-hours');
+    server.setNow(localInstant('2026-12-07', '20:00'));
+    const [row] = await select<Record<string, unknown>>(
+      server.context.db,
+      'SELECT * FROM messages',
+    );
+    await insert(server.context.db, 'messages', {
+      ...{ ...row, id: id + 1, dedupe_key: 'newer', state: 'sent', wording_versions: '{}' },
+    });
+    expect((await desk.post(retry(id)).expect(409)).body.code).toBe('replaced');
+  });
+
+  test('shows on every screen that nothing goes out, with what to do', async () => {
+    await server.visitor().get('/api/clinic/outbox').expect(401);
+    await (await server.signInStaff('language-reviewer')).get('/api/clinic/outbox').expect(403);
+    const at = server.context.clock.now() - 600_000;
+    await failed({ state: 'queued', due_at: new Date(at), next_try_at: new Date(at + 900_000) });
+    const desk = await server.signInStaff('front-desk');
+    const { body } = await desk.get('/api/clinic/outbox').expect(200);
+    expect(body).toMatchObject({ isStuck: true, waiting: 1 });
+    expect(body.says).toBe(
+      'Texts are not going out: 1 message is due, the oldest for 10 minutes. ' +
+        'Call the families on the call list and tell the administrator.',
+    );
   });
 });
 
@@ -217,6 +332,44 @@ describe('no visit', () => {
       'visit-cancelled sms',
     ]);
     expect(waiting[1]?.body).toContain('There is no visit on Wednesday, 9 December.');
+  });
+});
+
+describe('no visit, shortly before it', () => {
+  const lose = (morningIds: readonly number[]): Promise<void> =>
+    inTransaction(server.context.db, async (transaction) => {
+      await change(server.context.db, `UPDATE mornings SET state = 'lost'`, {}, transaction);
+      await tellVisitCancelled(server.context, transaction, morningIds);
+    });
+
+  test('goes at once to who agreed to early texts', async () => {
+    await signWords(server);
+    const { morningIds } = await addNight(server, { members: [{ texts: 'early' }] });
+    server.setNow(localInstant(nightOn, '04:30'));
+    await lose(morningIds);
+    const [row] = await rows();
+    expect(row?.kind).toBe('visit-cancelled');
+    expect(row?.due_at).toEqual(new Date(localInstant(nightOn, '04:30')));
+    expect(await reasons()).toEqual([]);
+  });
+
+  test('is a call for the rest: after the arrival it would be of no use', async () => {
+    await signWords(server);
+    const { morningIds } = await addNight(server, { members: [{ texts: 'day' }] });
+    server.setNow(localInstant(nightOn, '04:30'));
+    await lose(morningIds);
+    expect(await rows()).toEqual([]);
+    expect(await reasons()).toEqual(['visit-cancelled-failed']);
+  });
+
+  test('is told by a person first to who does not read', async () => {
+    await signWords(server);
+    const { morningIds } = await addNight(server, {
+      members: [{ texts: 'early', readsHow: 'no' }],
+    });
+    await lose(morningIds);
+    expect(await reasons()).toContain('visit-cancelled');
+    expect((await rows()).map(({ kind }) => kind)).toEqual(['visit-cancelled']);
   });
 });
 

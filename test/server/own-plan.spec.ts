@@ -81,3 +81,21 @@ it('an answer: a person decides, and only the sister goes on with nothing', asyn
   expect(line).toContain('Maryam');
   expect(line).not.toContain('Idris');
 });
+
+it('the night path, the moments and what a phone saves never say it of this child', async () => {
+  server.setNow(at('06:10'));
+  const { mother } = await householdOf(false);
+  const page = await mother.get('/api/family/next-morning').expect(200);
+  const question = await mother.get('/api/family/morning-question').expect(200);
+  const told = JSON.stringify([page.body, question.body]);
+  expect(told).not.toMatch(nobodyEats);
+  expect(told).toContain('We call you and tell you the times');
+});
+
+it('beside a sister the same sentences name the sister alone', async () => {
+  server.setNow(at('06:10'));
+  const { mother } = await householdOf(true);
+  const { body } = await mother.get('/api/family/morning-question').expect(200);
+  const saved = JSON.stringify((body as { saved: unknown }).saved);
+  expect(saved).toContain('Nothing to eat or drink for Maryam.');
+});

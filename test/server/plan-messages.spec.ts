@@ -114,15 +114,16 @@ describe('a night', () => {
       // The baby's last feed, 40 minutes before its stop at 3:00; the brother of the same night sleeps.
       ['reminder', at(nightOn, '02:20')],
       ['morning', at(nightOn, '05:30')],
+      ['nudge', at(nightOn, '05:45')],
     ]);
     const [evening, reminder, morning] = messages;
     expect(evening?.body.replace(/\/m\/\S+/, '/m/token')).toBe(
       [
-        'Harbor Clinic: Come on Wednesday, 9 December, 7:00 in the morning, Door B.',
+        'Harbor Clinic: Come Wednesday, 9 December, 7:00 in the morning, Door B.',
         'Night from Tuesday to Wednesday: no food, no drink, no water',
         'Baby after 3:00 at night',
         'Big boy after 1:00 at night',
-        'We text you at 5:30 in the morning. Plan: http://localhost:4300/m/token Call: 206-555-0110',
+        'We text you in the morning. Plan: http://localhost:4300/m/token Call 206-555-0110',
       ].join('\n'),
     );
     expect(evening?.last_useful_at).toEqual(at('2026-12-08', '21:00'));
@@ -141,7 +142,7 @@ describe('a night', () => {
     await signWords(server);
     await plan(await addNight(server, { children: [brother] }));
     const messages = await queued();
-    expect(messages.map(({ kind }) => kind)).toEqual(['evening', 'morning']);
+    expect(messages.map(({ kind }) => kind)).toEqual(['evening', 'morning', 'nudge']);
     for (const { body } of messages) expect(messageSegments(body).segments).toBeLessThanOrEqual(2);
     expect(messages[1]?.body).toContain('What did your child eat or drink?');
   });
@@ -172,6 +173,7 @@ describe('a night', () => {
       'evening mail',
       'morning sms',
       'morning mail',
+      'nudge sms',
     ]);
     for (const { subject, body } of await queued())
       expect(`${subject} ${body}`).not.toMatch(/Yusuf|Omar|Hadi|test\b|result|tubercul/i);
@@ -193,6 +195,7 @@ describe('a night', () => {
     expect(messages.map(({ kind, family_member_id }) => [kind, family_member_id])).toEqual([
       ['evening', mother],
       ['morning', grandmother],
+      ['nudge', grandmother],
     ]);
     expect(messages[0]?.body).not.toContain('We text you');
   });
@@ -237,7 +240,7 @@ describe('planning again', () => {
     await move('07:45');
     await plan(family);
     const second = await waiting();
-    expect(second.map(({ kind }) => kind)).toEqual(['evening', 'morning']);
+    expect(second.map(({ kind }) => kind)).toEqual(['evening', 'morning', 'nudge']);
     expect(second[0]?.body).toContain('7:45 in the morning');
     await move('07:00');
     await plan(family);
@@ -294,6 +297,138 @@ describe('planning again', () => {
     await change(server.context.db, 'UPDATE wordings SET signed_at = :now', { now: new Date() });
     await plan(family);
     expect(await reasons()).toEqual([]);
-    expect(await waiting()).toHaveLength(2);
+    expect(await waiting()).toHaveLength(3);
+  });
+});
+
+describe('days ahead and changes at once', () => {
+  const moveTo = (time: string): Promise<number> =>
+    change(server.context.db, 'UPDATE mornings SET arrival_time = :time, arrival_at = :at', {
+      time,
+      at: at(nightOn, time),
+    });
+  const sent = (kind: string): Promise<number> =>
+    change(
+      server.context.db,
+      `UPDATE messages SET state = 'sent' WHERE kind = :kind AND state = 'queued'`,
+      { kind },
+    );
+  const bodies = async (kind: string): Promise<string[]> =>
+    (await waiting()).filter((row) => row.kind === kind).map(({ body }) => body);
+
+  test('three days before the first morning there is a word, and none before the next', async () => {
+    await signWords(server);
+    server.setNow(localInstant('2026-12-04', '10:00'));
+    const family = await addNight(server);
+    await plan(family);
+    const [ahead] = await queued();
+    expect([ahead?.kind, ahead?.due_at]).toEqual(['ahead', at('2026-12-06', '10:00')]);
+    expect(ahead?.body).toContain('Your visit is on Wednesday, 9 December, 7:00 in the morning');
+    await change(server.context.db, `UPDATE messages SET state = 'withdrawn'`);
+    const [series] = await select<{ id: number }>(server.context.db, 'SELECT id FROM series');
+    const [room] = await select<{ id: number }>(server.context.db, 'SELECT id FROM rooms');
+    await insert(server.context.db, 'mornings', {
+      ...{ series_id: series?.id, child_id: family.childIds[0], site_id: family.siteId },
+      ...{ number: 2, planned_on: '2026-12-10', arrival_time: '07:00', room_id: room?.id },
+      ...{ arrival_at: at('2026-12-10', '07:00'), calendar_uid: 'second@example.org' },
+    });
+    await plan(family, '2026-12-10');
+    expect((await waiting()).map(({ kind }) => kind)).toEqual(['evening', 'morning', 'nudge']);
+  });
+
+  test('who is planned later than that hears no word ahead', async () => {
+    await signWords(server);
+    await plan(await addNight(server));
+    expect((await queued()).map(({ kind }) => kind)).not.toContain('ahead');
+  });
+
+  test('a new time after the word ahead goes out at once, as news', async () => {
+    await signWords(server);
+    server.setNow(localInstant('2026-12-04', '10:00'));
+    const family = await addNight(server);
+    await plan(family);
+    await sent('ahead');
+    server.setNow(localInstant('2026-12-07', '12:00'));
+    await moveTo('07:45');
+    await plan(family);
+    const [news] = await bodies('ahead');
+    expect(news).toContain('New time! Your visit is now on Wednesday, 9 December, 7:45');
+    await plan(family);
+    expect(await bodies('ahead')).toHaveLength(1);
+  });
+
+  test('a plan that changes after the evening text is told anew, and again when it goes back', async () => {
+    await signWords(server);
+    const family = await addNight(server);
+    await plan(family);
+    server.setNow(localInstant('2026-12-08', '18:10'));
+    await sent('evening');
+    await moveTo('07:45');
+    await plan(family);
+    expect((await bodies('evening'))[0]).toContain('New plan! Come Wednesday, 9 December, 7:45');
+    await sent('evening');
+    await moveTo('07:00');
+    await plan(family);
+    const [back] = await bodies('evening');
+    expect(back).toContain('New plan! Come Wednesday, 9 December, 7:00');
+    await sent('evening');
+    await plan(family);
+    expect(await bodies('evening')).toEqual([]);
+    expect(await reasons()).toEqual([]);
+  });
+
+  test('a change after 21:00 to who has heard another plan is a call', async () => {
+    await signWords(server);
+    const family = await addNight(server, { members: [{ texts: 'day' }] });
+    await plan(family);
+    await sent('evening');
+    server.setNow(localInstant('2026-12-08', '22:00'));
+    await moveTo('07:45');
+    await plan(family);
+    expect(await waiting()).toEqual([]);
+    expect(await reasons()).toEqual(['evening-too-late']);
+  });
+
+  test('other words for the same plan are not told again', async () => {
+    await signWords(server);
+    const family = await addNight(server);
+    await plan(family);
+    await sent('evening');
+    await change(server.context.db, `UPDATE children SET family_label = 'Little one'`);
+    await plan(family);
+    expect(await bodies('evening')).toEqual([]);
+    expect((await bodies('morning'))[0]).toContain('Little one');
+  });
+
+  test('a new number hears the plan that the old one heard', async () => {
+    await signWords(server);
+    const family = await addNight(server);
+    await plan(family);
+    await sent('evening');
+    await change(server.context.db, `UPDATE family_members SET phone = '+12065550177'`);
+    await plan(family);
+    expect((await waiting()).filter(({ kind }) => kind === 'evening')).toHaveLength(1);
+  });
+
+  test('two who share a telephone get one text', async () => {
+    await signWords(server);
+    const phone = '+12065550150';
+    const family = await addNight(server, {
+      members: [
+        { texts: 'early', phone },
+        { texts: 'early', phone, standing: 'helper' },
+      ],
+      children: [baby, brother],
+    });
+    const [mother, aunt] = family.memberIds;
+    for (const [place, carer] of [mother, aunt].entries())
+      await change(
+        server.context.db,
+        'UPDATE mornings SET night_carer_family_member_id = :carer WHERE id = :id',
+        { carer, id: family.morningIds[place] },
+      );
+    await plan(family);
+    const evenings = (await waiting()).filter(({ kind }) => kind === 'evening');
+    expect(evenings).toHaveLength(1);
   });
 });

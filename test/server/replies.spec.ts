@@ -2,6 +2,7 @@ import { inTransaction, select } from '../../server/database/connection';
 import { planHouseholdMessages } from '../../server/messages/plan-messages';
 import type { ReplyOutcome } from '../../server/messages/incoming-text';
 import { takeReply } from '../../server/messages/replies';
+import { insert } from '../support/insert';
 import { addNight, localInstant, nightOn, signWords, type NightFamily } from '../support/night';
 import { startTestServer, type TestServer } from '../support/server';
 
@@ -130,9 +131,68 @@ describe('1, 2 and 3', () => {
     expect((await answers()).map(({ answer }) => answer)).toEqual(['feed', 'feed']);
     expect(await replies()).toEqual([
       'Harbor Clinic: Thank you, that is all right. Call us before you leave: 206-555-0110. ' +
-        'When was it? Tell us here: http://localhost:4300/m/token',
+        'Who ate or drank?\n4 = Baby\n5 = Big boy\n6 = all of them',
     ]);
     expect(await reasons()).toEqual(['call-us']);
+  });
+
+  test('one child is not asked which; the time is', async () => {
+    await server.context.db.query(
+      `UPDATE mornings SET state = 'lost' WHERE id = ${family.morningIds[1]}`,
+    );
+    inTheMorning();
+    expect(await text('2')).toBe('answered');
+    expect((await replies())[0]).toContain('When was it? Tell us here: http://localhost:4300/m/');
+  });
+
+  test('which child is asked once and answered by its digit, in any script', async () => {
+    inTheMorning();
+    await text('2');
+    expect(await text('٥')).toBe('answered');
+    expect((await answers()).map(({ answer }) => answer).slice(-2)).toEqual(['nothing', 'feed']);
+    expect((await replies())[1]).toContain('When was it? Tell us here:');
+    expect(await text('2')).toBe('answered');
+    expect((await replies())[2]).not.toContain('Who ate or drank?');
+    expect((await answers()).map(({ answer }) => answer).slice(-2)).toEqual(['feed', 'feed']);
+  });
+
+  test.each(['4', '7', '9'])(
+    '%s goes to a person when nobody asked, or it is none',
+    async (body) => {
+      inTheMorning();
+      if (body !== '4') await text('2');
+      const before = (await answers()).length;
+      expect(await text(body)).toBe('unclear');
+      expect(await answers()).toHaveLength(before);
+      expect(await reasons()).toContain('text-unclear');
+    },
+  );
+
+  test('words beside a 2 and a picture beside a 1 reach a person as well', async () => {
+    inTheMorning();
+    expect(await text('2 she had a bottle')).toBe('answered');
+    expect(await reasons()).toEqual(['call-us', 'text-unclear']);
+    await server.context.db.query('DELETE FROM call_tasks');
+    const sid = `SM${'e'.repeat(32)}`;
+    const receivedAt = server.context.clock.now();
+    const picture = { providerId: sid, from: phone, body: '1', pictures: 1, receivedAt };
+    expect(await takeReply(server.context, picture)).toBe('answered');
+    expect(await reasons()).toEqual(['text-picture']);
+  });
+
+  test('an answer by text after another one on the page: both kept, the later counts, staff hears once', async () => {
+    inTheMorning();
+    for (const morningId of family.morningIds)
+      await insert(server.context.db, 'fasting_checks', {
+        ...{ morning_id: morningId, source: 'web', submission_key: 'web-1', answer: 'feed' },
+        ...{ outcome: 'call-us', said: '{}', language: 'en' },
+        received_at: new Date(server.context.clock.now() - 60_000),
+      });
+    expect(await text('1')).toBe('answered');
+    expect(await answers()).toHaveLength(4);
+    expect(await reasons()).toContain('answers-differ');
+    await text('1');
+    expect((await reasons()).filter((reason) => reason === 'answers-differ')).toHaveLength(1);
   });
 
   test('2 while nobody answers the telephone: stay, we call', async () => {
@@ -179,6 +239,21 @@ describe('the legal words', () => {
     expect(row?.said).toBe(body);
   });
 
+  test('STOP before a text that nothing else tells makes a call for it', async () => {
+    await insert(server.context.db, 'messages', {
+      ...{ dedupe_key: 'clinic-closed:1', kind: 'clinic-closed', channel: 'sms' },
+      ...{ household_id: family.householdId, family_member_id: family.memberIds[0] },
+      ...{ address: phone, language: 'en', body: 'Words', wording_versions: '{}' },
+      ...{ call_reason: 'clinic-closed', state: 'queued', morning_on: nightOn },
+      due_at: new Date(localInstant(nightOn, '08:00')),
+      last_useful_at: new Date(localInstant(nightOn, '14:00')),
+      next_try_at: new Date(localInstant(nightOn, '08:00')),
+      created_at: new Date(server.context.clock.now()),
+    });
+    await text('STOP');
+    expect(await reasons()).toEqual(['clinic-closed', 'nobody-to-message', 'opted-out']);
+  });
+
   test('a second STOP is confirmed no second time', async () => {
     await text('STOP');
     await text('STOP');
@@ -200,6 +275,12 @@ describe('the legal words', () => {
     expect(await waiting()).toEqual(before);
     expect((await replies())[1]).toContain('You get texts about your visits again.');
     expect(await reasons()).toEqual(['opted-out']);
+  });
+
+  test('"yes" is no START while the texts are on', async () => {
+    expect(await text('yes')).toBe('unclear');
+    await text('STOP');
+    expect(await text('Yes')).toBe('opted-in');
   });
 
   test('HELP answers with the telephone number', async () => {
@@ -227,4 +308,28 @@ test('a phone that two households share speaks for the one that is asked', async
   );
   expect(rows.map((row) => row.household_id)).toEqual([family.householdId]);
   expect(rows[0]?.household_id).not.toBe(other.householdId);
+});
+
+describe('a household with a child whose own plan nobody has composed', () => {
+  beforeEach(async () => {
+    await server.context.db.query(
+      `UPDATE children SET cautions = '["diabetes"]' WHERE id = ${family.childIds[0]}`,
+    );
+  });
+  const setDawn = (from: string): Promise<unknown> =>
+    server.context.db.query(`UPDATE sites SET dawn_answers_from_time = '${from}'`);
+
+  test.each([
+    ['1', '04:30', 'Call us before you leave'],
+    ['1', '06:30', 'The nurse decides.'],
+    ['2', '06:30', 'We call you by'],
+  ])('%s, telephone from %s: no word of going on without food', async (digit, from, says) => {
+    inTheMorning();
+    await setDawn(from);
+    expect(await text(digit)).toBe('answered');
+    await setDawn('04:30');
+    const [reply] = await replies();
+    expect(reply).toContain(says);
+    expect(reply).not.toMatch(/nothing (more )?to eat/i);
+  });
 });

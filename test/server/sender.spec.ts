@@ -116,6 +116,46 @@ describe('what is not sent', () => {
     expect((await bench.row('hours-later')).state).toBe('given-up');
   });
 
+  it('lets one care text a day and three in a week go to a number without a consent', async () => {
+    const sender = bench.sender();
+    const day = 24 * 60 * minute;
+    const states: string[] = [];
+    for (const [key, days] of [
+      ['one', 0],
+      ['same day', 0.5],
+      ['two', 1.1],
+      ['three', 2.2],
+      ['fourth in the week', 3.3],
+      ['a week later', 9.5],
+    ] as const) {
+      const now = Date.UTC(2027, 3, 12, 18) + days * day;
+      bench.now = now;
+      await bench.queue({ dedupeKey: key, isWithoutConsent: true, body: `Visit ${key}` });
+      await sender.drain();
+      const row = await bench.row(key);
+      states.push(`${row.state} ${row.failure_code ?? ''}`.trim());
+    }
+    expect(states).toEqual([
+      'sent',
+      'given-up care-limit',
+      'sent',
+      'sent',
+      'given-up care-limit',
+      'sent',
+    ]);
+    expect(bench.givenUp).toHaveLength(2);
+  });
+
+  it('sends no care text of two parts without a consent, and counts no text with one', async () => {
+    await bench.queue({ dedupeKey: 'long', isWithoutConsent: true, body: 'a'.repeat(161) });
+    await bench.queue({ dedupeKey: 'agreed' });
+    await bench.queue({ dedupeKey: 'short', isWithoutConsent: true, body: 'A visit is planned.' });
+    await bench.sender().drain();
+    expect((await bench.row('long')).failure_code).toBe('care-limit');
+    expect((await bench.row('agreed')).state).toBe('sent');
+    expect((await bench.row('short')).state).toBe('sent');
+  });
+
   it('sends again to a number that opted in again', async () => {
     const ended = { since_at: new Date(bench.now - 2), ended_at: new Date(bench.now - 1) };
     await insert(bench.db, 'opt_outs', {
@@ -357,6 +397,53 @@ describe('delivery reports', () => {
     expect(bench.givenUp).toHaveLength(1);
   });
 
+  it('make no double when a lost text arrives after all while another attempt waits', async () => {
+    const { sender, report } = await sent();
+    await report('undelivered', '30003');
+    await sender.drain();
+    expect((await bench.row('reported')).state).toBe('queued');
+    await report('delivered');
+    bench.now += 5 * minute;
+    await sender.drain();
+    expect(await bench.row('reported')).toMatchObject({ state: 'delivered', attempts: 1 });
+    expect(bench.textsTo(familyPhone)).toHaveLength(1);
+    expect(bench.givenUp).toEqual([]);
+  });
+
+  it('let the first attempt arrive late although the second is lost', async () => {
+    const { sender, report } = await sent();
+    await report('undelivered', '30008');
+    await sender.drain();
+    bench.now += 5 * minute;
+    await sender.drain();
+    const { provider_id: second } = await bench.row('reported');
+    await keepDeliveryReport(bench.db, {
+      ...{ providerId: second ?? '', status: 'undelivered', errorCode: '30005' },
+      receivedAt: bench.now,
+    });
+    await sender.drain();
+    expect((await bench.row('reported')).state).toBe('failed');
+    await report('delivered');
+    await sender.drain();
+    expect((await bench.row('reported')).state).toBe('delivered');
+    expect(bench.givenUp).toHaveLength(1);
+  });
+
+  it.each([
+    ['30004', 'failed'],
+    ['30006', 'failed'],
+    ['30007', 'failed'],
+    ['30034', 'failed'],
+    ['99999', 'failed'],
+    ['30001', 'queued'],
+    ['30008', 'queued'],
+  ])('code %s leaves the text %s', async (code, state) => {
+    const { sender, report } = await sent();
+    await report('undelivered', code);
+    await sender.drain();
+    expect(await bench.row('reported')).toMatchObject({ state, failure_code: code });
+  });
+
   it('give a handset out of reach another attempt while that is useful', async () => {
     const { sender, report } = await sent();
     await report('undelivered', '30003');
@@ -379,5 +466,25 @@ it('knows when nothing goes out', async () => {
     sending: 0,
     oldestDueAt: null,
     isStuck: false,
+    failures: 0,
   });
+});
+
+it('knows that nothing goes out while a service refuses everything again and again', async () => {
+  bench.standIns.faults.set([
+    { channel: 'sms', does: 'refuse', status: 401, code: 20003, times: 9 },
+  ]);
+  await bench.queue({ dedupeKey: 'locked-out', lastUsefulAt: bench.now + 10 * 60 * minute });
+  const sender = bench.sender();
+  for (let tries = 0; tries < 3; tries += 1) {
+    await sender.drain();
+    bench.now += 2 * minute;
+  }
+  const health = await outboxHealth(bench.db, bench.now);
+  expect(health).toMatchObject({ waiting: 1, isStuck: true, failures: 0 });
+  for (let tries = 0; tries < 5; tries += 1) {
+    bench.now += 20 * minute;
+    await sender.drain();
+  }
+  expect(await outboxHealth(bench.db, bench.now)).toMatchObject({ waiting: 0, failures: 1 });
 });

@@ -145,7 +145,7 @@ describe('brothers and sisters', () => {
     const answer = planSeriesAnswer.parse(planned.body);
     expect(answer.series).toHaveLength(2);
     expect(answer.familyWillHear.length).toBeGreaterThan(0);
-    expect(JSON.stringify(answer.familyWillHear)).not.toMatch(/\/[mi]\/[\w-]{22}/);
+    expect(JSON.stringify(answer.familyWillHear)).not.toMatch(/\/[mi]\/[\w-]{16}/);
     const { siteId } = clinic;
     const plans = await morningPlansOf(server.context.db, { siteId, on: '2027-04-20' });
     expect(plans.map(({ callMe, number, ofPlanned }) => [callMe, number, ofPlanned])).toEqual([
@@ -191,6 +191,9 @@ it('lets one of two have the last place, and tells the other kindly', async () =
   const lost = answers.find(({ status }) => status === 409)?.body;
   expect(lost.code).toBe('place-taken');
   expect(lost.title).toContain('choose among the places that are left');
+  const left = seriesProposal.parse(lost.proposal);
+  expect(left.days.find(({ on }) => on === days[0])?.placesLeft).toBe(4);
+  expect(left.runs[0]?.days[0]?.places[0]?.arrivalTime).toBe('06:20');
   expect(await count('series')).toBe(1);
   expect(await count('mornings')).toBe(3);
 });
@@ -229,6 +232,101 @@ it('says that a child with a caution needs an individual plan', async () => {
   const order = await readyOrder(clinician, { cautions: ['prematurity'] });
   const { body } = await post('/series/previews', planOf([order])).expect(200);
   expect(body.firstNight[0].individualPlanNeeded).toContain('prematurity');
+});
+
+describe('the usual night', () => {
+  it('is asked when planning: a place that passes the longest fast is refused with its hours', async () => {
+    const order = await readyOrder(clinician, { bornOn: '2026-11-02', feeding: 'breast' });
+    const search = { orderIds: [order.orderId], from: '2027-04-19', morningsPlanned: 3, weeks: 1 };
+    const night = { childId: order.childId, lastMealTime: '20:00' };
+    const told = { ...search, nights: [{ ...night, nightFeedTimes: ['01:30', '04:30'] }] };
+    const fed = seriesProposal.parse((await post('/series/proposals', told).expect(200)).body);
+    expect(fed.runs.length).toBeGreaterThan(0);
+    const without = { ...search, nights: [{ ...night, nightFeedTimes: [] }] };
+    const hungry = seriesProposal.parse(
+      (await post('/series/proposals', without).expect(200)).body,
+    );
+    expect(hungry.runs).toEqual([]);
+    // 20:00 to 6:00 and half an hour of waiting; 6 hours are the longest at five months.
+    expect(hungry.days[1]?.refused).toMatchObject([
+      {
+        code: 'fast-too-long',
+        says: 'Too late for Zoé: 10.5 hours without food with the usual wait, 6 at the most',
+      },
+    ]);
+    const wrong = { ...search, nights: [{ ...night, nightFeedTimes: ['25:00'] }] };
+    const { status, body } = await post('/series/proposals', wrong);
+    expect([status, body.errors[0].path]).toEqual([422, 'nights.0.nightFeedTimes.0']);
+  });
+
+  it('says which feed falls away, stays with the child and is offered the next time', async () => {
+    const order = await readyOrder(clinician, { bornOn: '2026-11-02', feeding: 'breast' });
+    const nights = [
+      { childId: order.childId, lastMealTime: '20:00', nightFeedTimes: ['01:30', '04:30'] },
+    ];
+    const plan = { ...planOf([order]), nights };
+    const preview = await post('/series/previews', plan).expect(200);
+    expect(previewSeriesAnswer.parse(preview.body).firstNight[0]?.fallsAway).toBe(
+      'The feed at 04:30',
+    );
+    const search = { orderIds: [order.orderId], from: '2027-04-19', morningsPlanned: 3 };
+    await post('/series', planOf([await readyOrder(clinician)], [['06:20', 1]])).expect(200);
+    await post('/series', plan).expect(200);
+    await change(
+      server.context.db,
+      'DELETE FROM mornings WHERE series_id IN (SELECT id FROM series WHERE order_id = :id)',
+      { id: order.orderId },
+    );
+    await change(server.context.db, 'DELETE FROM series WHERE order_id = :id', {
+      id: order.orderId,
+    });
+    const { body } = await post('/series/proposals', search).expect(200);
+    expect(body.children[0].usualNight).toEqual({
+      lastMealTime: '20:00',
+      nightFeedTimes: ['01:30', '04:30'],
+    });
+  });
+});
+
+it('waits for a ride and for a report that is due, by the lead times of the clinic', async () => {
+  const order = await readyOrder(clinician);
+  const db = server.context.db;
+  await change(db, 'UPDATE orders SET reporting_due_on = :on, reported_at = NULL', {
+    on: '2027-04-16',
+  });
+  await change(db, 'UPDATE sites SET reporting_lead_days = 2');
+  const search = { orderIds: [order.orderId], from: '2027-04-14', morningsPlanned: 1 };
+  const codes = async (more: object): Promise<string[]> => {
+    const { body } = await post('/series/proposals', { ...search, ...more }).expect(200);
+    return seriesProposal.parse(body).days[1]?.refused.map(({ code }) => code) ?? [];
+  };
+  expect(await codes({ needsRide: true })).toEqual(['ride-lead-time', 'reporting-lead-time']);
+  expect(await codes({})).toEqual(['reporting-lead-time']);
+  await change(db, 'UPDATE orders SET reported_at = NOW(3)');
+  expect(await codes({})).toEqual([]);
+  const plan = { ...planOf([order], [['06:00', 0]], ['2027-04-15']), needsRide: true };
+  await change(db, 'UPDATE orders SET mornings_planned = 1');
+  const { status, body } = await post('/series', plan);
+  expect([status, body.code]).toEqual([409, 'day-refused']);
+  expect(body.detail).toContain('A ride must be booked 3 days ahead.');
+  expect(seriesProposal.parse(body.proposal).days.length).toBeGreaterThan(0);
+});
+
+it('names a public holiday, and reads what is booked in the weeks it looks at alone', async () => {
+  const order = await readyOrder(clinician);
+  const { body } = await post('/series/proposals', {
+    orderIds: [order.orderId],
+    from: '2027-05-24',
+    morningsPlanned: 1,
+    weeks: 12,
+  }).expect(200);
+  const proposal = seriesProposal.parse(body);
+  expect(proposal.days).toHaveLength(84);
+  // The last Monday of May (5 U.S.C. 6103).
+  expect(proposal.days.find(({ on }) => on === '2027-05-31')?.refused).toEqual([
+    { code: 'public-holiday', says: 'Public holiday: Memorial Day' },
+  ]);
+  expect(proposal.capacitySays).toContain('2 rooms, 1 pair of staff, at most 5 children');
 });
 
 it('needs signature and consent first', async () => {

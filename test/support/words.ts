@@ -35,7 +35,7 @@ export const shippedLanguages: readonly LanguageId[] = readdirSync(
 ).filter(isLanguageId);
 
 /** Only staff reads these files: a language in which only families read need not have them. */
-const clinicFiles = ['calls.json', 'letters-clinic.json', 'staff.json'];
+const clinicFiles = ['alerts.json', 'calls.json', 'letters-clinic.json', 'staff.json'];
 
 /** The keys that a language must have. */
 export function keysOwedIn(language: LanguageId): string[] {

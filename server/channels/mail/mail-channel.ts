@@ -29,14 +29,14 @@ export const isMailAddress = (text: string): boolean => text.length <= 254 && ad
 export const messageIdOf = (id: number, from: string): string =>
   `<message-${id}@${from.slice(from.lastIndexOf('@') + 1)}>`;
 
-export function openMailChannel({ mail }: Pick<Settings, 'mail'>): MailChannel {
+export function openMailChannel({ mail, sender }: Pick<Settings, 'mail' | 'sender'>): MailChannel {
   const transport = createTransport({
     url: mail.url,
     pool: true,
     maxConnections: 3,
     connectionTimeout: 10_000,
     greetingTimeout: 10_000,
-    socketTimeout: 20_000,
+    socketTimeout: sender.answersWithinMs,
     disableFileAccess: true,
     disableUrlAccess: true,
   });

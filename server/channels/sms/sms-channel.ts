@@ -26,17 +26,16 @@ export interface SmsChannel {
 }
 
 const telephone = /^\+[1-9]\d{6,14}$/;
-const answerWithinMs = 15_000;
 const looksAtTexts = 50;
 
 /** The provider's SDK takes 20 MB and a quarter of a second to load: the sender loads it at its first text. */
-async function openClient(sms: Settings['sms']): Promise<Twilio> {
+async function openClient({ sms, sender }: Pick<Settings, 'sms' | 'sender'>): Promise<Twilio> {
   const { default: twilio } = (await import('twilio')) as unknown as {
     default: typeof TwilioModule;
   };
   if (sms.provider === 'twilio')
     return twilio(sms.accountSid, sms.authToken, {
-      httpClient: new twilio.RequestClient({ timeout: answerWithinMs }),
+      httpClient: new twilio.RequestClient({ timeout: sender.answersWithinMs }),
     });
   class StandInClient extends twilio.RequestClient {
     override request<Data>(options: RequestClient.RequestOptions<Data>) {
@@ -45,14 +44,14 @@ async function openClient(sms: Settings['sms']): Promise<Twilio> {
     }
   }
   return twilio(sms.accountSid, sms.authToken, {
-    httpClient: new StandInClient({ timeout: answerWithinMs }),
+    httpClient: new StandInClient({ timeout: sender.answersWithinMs }),
   });
 }
 
 export function openSmsChannel(settings: Settings): SmsChannel {
   const { sms, origin } = settings;
   let opening: Promise<Twilio> | undefined;
-  const client = () => (opening ??= openClient(sms));
+  const client = () => (opening ??= openClient(settings));
   return {
     async send({ to, body }) {
       if (!telephone.test(to))

@@ -1,4 +1,5 @@
 import { DeliveryFailure } from '../delivery-failure';
+import { providerCode } from './provider-codes';
 
 /** The request did not reach the provider. */
 const neverArrived = new Set([
@@ -24,9 +25,12 @@ export function failureOfSms(error: unknown): DeliveryFailure {
   const name = typeof code === 'string' || typeof code === 'number' ? String(code) : 'no-code';
   if (typeof status !== 'number')
     return new DeliveryFailure(neverArrived.has(name) ? 'later' : 'unknown', name, says);
+  if (status >= 500) return new DeliveryFailure('unknown', name, says);
+  const known = providerCode(name);
+  if (known)
+    return new DeliveryFailure(known.kind === 'refused' ? 'refused' : 'later', name, known.says);
   // Too many at once, or our own account is not let in: nothing is wrong with this number.
   if (status === 429 || status === 401 || status === 403)
     return new DeliveryFailure('later', name, says);
-  if (status >= 500) return new DeliveryFailure('unknown', name, says);
   return new DeliveryFailure('refused', name, says);
 }

@@ -25,6 +25,11 @@ export const routes: Routes = [
     loadChildren: () => import('./calls/calls-routes').then((file) => file.routes),
   },
   {
+    path: 'alerts',
+    canActivate: [needsRight('alerts.take')],
+    loadChildren: () => import('./alerts/alerts-routes').then((file) => file.routes),
+  },
+  {
     path: 'orders',
     canActivate: [needsRight('children.read')],
     loadChildren: () => import('./orders/orders-routes').then((file) => file.routes),
@@ -38,6 +43,11 @@ export const routes: Routes = [
     path: 'series',
     canActivate: [needsRight('series.plan')],
     loadChildren: () => import('./series/series-routes').then((file) => file.routes),
+  },
+  {
+    path: 'set-out',
+    canActivate: [needsRight('mornings.run')],
+    loadChildren: () => import('./set-out/set-out-routes').then((file) => file.routes),
   },
   {
     path: 'specimens',

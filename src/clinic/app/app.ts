@@ -5,7 +5,9 @@ import { filter, pairwise } from 'rxjs';
 import type { Right } from '../../../shared/access/rights';
 import { ClinicUser } from '../../common/session/clinic-user';
 import { SchemeSwitch } from '../../common/ui/scheme-switch/scheme-switch';
+import { AlertsStrip } from './alerts/alerts-strip';
 import { LanguageSwitch } from './language-switch';
+import { OutboxAlarm } from './messages/outbox-alarm';
 
 interface ScreenWord {
   readonly path: string;
@@ -42,7 +44,15 @@ const words: readonly ScreenWord[] = [
 /** The frame of the clinic's side: one line of words over a horizon, the current one with a sun on it. */
 @Component({
   selector: 'td-root',
-  imports: [LanguageSwitch, RouterLink, RouterLinkActive, RouterOutlet, SchemeSwitch],
+  imports: [
+    AlertsStrip,
+    LanguageSwitch,
+    OutboxAlarm,
+    RouterLink,
+    RouterLinkActive,
+    RouterOutlet,
+    SchemeSwitch,
+  ],
   templateUrl: './app.html',
   styleUrl: './app.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -61,6 +71,14 @@ export class App {
         (word.path !== '/rehearsal' || session.hasRehearsal),
     );
   });
+
+  protected readonly hearsOfMessages = computed(
+    () => this.user.session()?.staff.rights.includes('messages.read') ?? false,
+  );
+
+  protected readonly hearsOfAlerts = computed(
+    () => this.user.session()?.staff.rights.includes('alerts.take') ?? false,
+  );
 
   constructor() {
     this.router.events

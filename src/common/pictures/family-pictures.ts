@@ -15,7 +15,15 @@ const atHand: Pictures = {
 };
 
 /** Pictures that show a direction and turn round in right-to-left. */
-const turning = new Set(['leave-home', 'leave-by-bus', 'papers', 'emergency', 'next']);
+const turning = new Set([
+  'leave-home',
+  'leave-by-bus',
+  'taxi',
+  'on-foot',
+  'papers',
+  'emergency',
+  'next',
+]);
 
 /** Half of the drawings are seldom asked for: a group comes when the first name of it is not at hand. */
 const groups: (() => Promise<Pictures>)[] = [

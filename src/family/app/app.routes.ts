@@ -1,18 +1,36 @@
-import type { Routes } from '@angular/router';
+import type { CanActivateFn, Routes } from '@angular/router';
 import { signedInFamily } from '../../common/session/family-guard';
+
+const nextMorning = () =>
+  import('./next-morning/next-morning').then((file) => file.NextMorningPage);
+const morningQuestion = () =>
+  import('./morning-question/morning-question').then((file) => file.MorningQuestionPage);
+
+/** Fetches a screen while the clinic is asked who is here, not after: one trip less on a bad line. */
+const meanwhile =
+  (fetchScreen: () => Promise<unknown>): CanActivateFn =>
+  () => {
+    // What did not come is asked for again, and its failure told, when the screen is opened.
+    fetchScreen().catch(() => undefined);
+    return true;
+  };
 
 // Each screen comes when it is opened; the worker fetches the rest once the first one stands.
 export const routes: Routes = [
   {
     path: '',
     pathMatch: 'full',
-    loadComponent: () => import('./next-morning/next-morning').then((file) => file.NextMorningPage),
-    canActivate: [signedInFamily],
+    loadComponent: nextMorning,
+    canActivate: [meanwhile(nextMorning), signedInFamily],
   },
   {
     path: 'morning',
-    loadComponent: () =>
-      import('./morning-question/morning-question').then((file) => file.MorningQuestionPage),
+    loadComponent: morningQuestion,
+    canActivate: [meanwhile(morningQuestion), signedInFamily],
+  },
+  {
+    path: 'say-it-back',
+    loadComponent: () => import('./say-it-back/say-it-back').then((file) => file.SayItBackPage),
     canActivate: [signedInFamily],
   },
   {

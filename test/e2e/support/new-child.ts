@@ -1,4 +1,6 @@
-import type { Page } from '@playwright/test';
+import type { Locator, Page } from '@playwright/test';
+import { languageOf, type LanguageId } from '../../../shared/languages/languages';
+import { say } from './frame-words';
 import { expect } from './walk';
 
 export interface Adult {
@@ -8,6 +10,8 @@ export interface Adult {
   readonly phone: string;
   readonly email: string | null;
   readonly isHelper: boolean;
+  /** English when it is not said. */
+  readonly reads?: LanguageId;
 }
 
 export interface Child {
@@ -20,57 +24,84 @@ export interface Child {
 
 /** The first adult is the mother, who agreed to texts, early texts and e-mail. */
 export async function addChild(page: Page, child: Child): Promise<void> {
-  await page.getByRole('link', { name: 'Add a child' }).click();
-  await page.getByLabel('Full name').fill(child.fullName);
-  await page.getByLabel('Called').fill(child.callMe);
-  await page.getByLabel('Label in texts').fill(child.familyLabel);
-  await page.getByLabel('Date of birth').fill(child.bornOn);
+  await page.getByRole('link', { name: say(page, 'Add a child') }).click();
+  await page.getByLabel(say(page, 'Full name')).fill(child.fullName);
+  await page.getByLabel(say(page, 'Called')).fill(child.callMe);
+  await page.getByLabel(say(page, 'Label in texts')).fill(child.familyLabel);
+  await page.getByLabel(say(page, 'Date of birth')).fill(child.bornOn);
   for (const [index, adult] of child.adults.entries()) {
-    if (index > 0) await page.getByRole('button', { name: 'Add another adult' }).click();
+    if (index > 0) await page.getByRole('button', { name: say(page, 'Add another adult') }).click();
     await fillAdult(page, index + 1, adult);
   }
-  await page.getByRole('button', { name: 'Keep this child' }).click();
+  await page.getByRole('button', { name: say(page, 'Keep this child') }).click();
   await expect(page.getByRole('heading', { level: 1, name: child.fullName })).toBeVisible();
 }
 
 async function fillAdult(page: Page, number: number, adult: Adult): Promise<void> {
   const part = page
     .locator('section')
-    .filter({ has: page.getByRole('heading', { name: `Adult ${number}` }) });
-  await part.getByLabel('Name, as the person writes it').fill(adult.fullName);
-  await part.getByLabel('Relationship').fill(adult.relationship);
-  await part.getByLabel('Telephone').fill(adult.phone);
-  if (adult.isHelper) {
-    await part.getByRole('combobox', { name: 'Standing' }).click();
-    await page.getByRole('option', { name: /^Helper/ }).click();
+    .filter({ has: page.getByRole('heading', { name: say(page, 'Adult {}', number) }) });
+  const label = (english: string, exact = false) => part.getByLabel(say(page, english), { exact });
+  await label('Name, as the person writes it').fill(adult.fullName);
+  await label('Relationship').fill(adult.relationship);
+  await label('Telephone').fill(adult.phone);
+  if (adult.isHelper)
+    await choose(page, part, 'Standing', say(page, 'Helper, brings the child, sees no results'));
+  if (adult.reads) {
+    await choose(page, part, 'Reads', nameOf(page, adult.reads));
+    await label('Speaks').fill(languageOf(adult.reads).englishName);
   }
-  await part.getByLabel('Agreed to texts about the mornings').check();
-  await part.getByLabel('Agreed to texts before 8 in the morning').check();
+  await label('Agreed to texts about the mornings').check();
+  await label('Agreed to texts before 8 in the morning').check();
   if (adult.email !== null) {
-    await part.getByLabel('E-mail', { exact: true }).fill(adult.email);
-    await part.getByLabel('Agreed to e-mail').check();
+    await label('E-mail', true).fill(adult.email);
+    await label('Agreed to e-mail').check();
   }
+}
+
+async function choose(page: Page, part: Locator, english: string, option: string): Promise<void> {
+  await part
+    .getByRole('combobox', { name: say(page, english) })
+    .first()
+    .click();
+  await page.getByRole('option', { name: option, exact: true }).click();
+}
+
+/** As staff calls the language. */
+function nameOf(page: Page, language: LanguageId): string {
+  const isEnglish = page.url().includes('/clinic/en/');
+  const names = new Intl.DisplayNames(['es'], { type: 'language' });
+  return isEnglish ? languageOf(language).englishName : (names.of(language) ?? '');
 }
 
 export async function addOrder(page: Page, child: Child): Promise<void> {
-  await page.getByRole('link', { name: 'New order' }).click();
-  await page.getByLabel('Ordered by').fill('Dr. Ines Okafor');
-  await page.getByLabel('Where to answer').fill('Alder Street, chest clinic, extension 12');
-  await page.getByLabel('Reason').fill('Contact of a person with tuberculosis, cough for a month.');
-  await page.getByLabel('Weight, kg').fill('11.9');
-  await page.getByRole('button', { name: 'Keep this order' }).click();
-  await expect(page.getByRole('heading', { name: `Order for ${child.fullName}` })).toBeVisible();
-  await expect(page.getByText('Waits for a clinician’s signature')).toBeVisible();
+  await page.getByRole('link', { name: say(page, 'New order') }).click();
+  await page.getByLabel(say(page, 'Ordered by')).fill('Dr. Ines Okafor');
+  await page
+    .getByLabel(say(page, 'Where to answer'))
+    .fill('Alder Street, chest clinic, extension 12');
+  await page
+    .getByLabel(say(page, 'Reason'))
+    .fill('Contact of a person with tuberculosis, cough for a month.');
+  await page.getByLabel(say(page, 'Weight, kg')).fill('11.9');
+  await page.getByRole('button', { name: say(page, 'Keep this order') }).click();
+  const name = say(page, 'Order for {}', child.fullName);
+  await expect(page.getByRole('heading', { name })).toBeVisible();
+  await expect(page.getByText(say(page, 'Waits for a clinician’s signature'))).toBeVisible();
 }
 
 export async function recordConsent(page: Page, mother: Adult): Promise<void> {
-  await page.getByRole('combobox', { name: 'Who consents' }).click();
+  await page.getByRole('combobox', { name: say(page, 'Who consents') }).click();
   await page.getByRole('option', { name: mother.fullName }).click();
-  await page.getByLabel('Legal basis').fill('parent');
-  await page.getByLabel('Version of the form').fill('A-3');
-  await page.getByLabel('The child’s comfort plan').fill('On the lap, a song, the own blanket.');
-  await page.getByRole('button', { name: 'Record this consent' }).click();
-  await expect(page.getByText(`By ${mother.fullName}`)).toBeVisible();
+  await page.getByLabel(say(page, 'Legal basis')).fill('parent');
+  await page.getByLabel(say(page, 'Version of the form')).fill('A-3');
+  await page
+    .getByLabel(say(page, 'The child’s comfort plan'))
+    .fill('On the lap, a song, the own blanket.');
+  await page.getByRole('button', { name: say(page, 'Record this consent') }).click();
+  await expect(
+    page.locator('[aria-labelledby=consent] .is-well').filter({ hasText: mother.fullName }),
+  ).toBeVisible();
 }
 
 export interface PlannedMorning {
@@ -85,7 +116,7 @@ export async function planFirstRun(
   child: Child,
   bringers: readonly Adult[],
 ): Promise<readonly PlannedMorning[]> {
-  await page.getByRole('link', { name: 'Choose the mornings' }).click();
+  await page.getByRole('link', { name: say(page, 'Choose the mornings') }).click();
   await page.getByRole('radio').first().check();
   await expect(page.getByRole('heading', { name: child.fullName })).toBeVisible();
   const chosen = page.getByRole('combobox').and(page.locator('[id^="escort-"]'));
@@ -97,9 +128,9 @@ export async function planFirstRun(
   const ids = await chosen.evaluateAll((selects) => selects.map(({ id }) => id));
   const words = await page.locator('label.run.is-chosen').innerText();
   const times = [...words.matchAll(/\b\d{2}:\d{2}\b/g)].map(([time]) => time);
-  await page.getByRole('button', { name: 'Plan these 3 mornings' }).click();
+  await page.locator('.decide button.first').click();
   await expect(
-    page.getByRole('heading', { name: /^Planned\. The family will hear/ }),
+    page.getByRole('heading', { name: say(page, 'Planned. The family will hear:') }),
   ).toBeVisible();
   return ids.map((id, index) => ({
     on: id.replace('escort-', ''),

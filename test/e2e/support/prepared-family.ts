@@ -30,8 +30,18 @@ export async function prepareFamily(
     fullName,
     callMe,
     phone,
+    email = null,
     language = 'en',
-  }: { fullName: string; callMe: string; phone: string; language?: string },
+    agreesToEarlyTexts = true,
+  }: {
+    fullName: string;
+    callMe: string;
+    phone: string;
+    /** With one the mother gets calendar entries. */
+    email?: string | null;
+    language?: string;
+    agreesToEarlyTexts?: boolean;
+  },
 ): Promise<PreparedFamily> {
   if ((await house.standIns.texts(phone)).length > 0) {
     throw new Error(`${phone} belongs to a family of an earlier test.`);
@@ -53,13 +63,14 @@ export async function prepareFamily(
         mayConsent: true,
         seesResults: true,
         phone,
+        email,
         readsLanguage: language,
         readsHow: 'well',
         speaksLanguage: 'English',
         needsInterpreter: false,
         agreesToTexts: true,
-        agreesToEarlyTexts: true,
-        agreesToMail: false,
+        agreesToEarlyTexts,
+        agreesToMail: email !== null,
       },
     ],
     submissionKey: randomUUID(),

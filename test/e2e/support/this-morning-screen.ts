@@ -1,4 +1,6 @@
 import type { Locator, Page } from '@playwright/test';
+import type { ClinicLanguage } from '../../../shared/languages/clinic-languages';
+import { say, sayLike } from './frame-words';
 import { expect } from './walk';
 
 /** "This morning" as the nurse has it open. */
@@ -12,8 +14,8 @@ export class ThisMorningScreen {
   }
 
   /** Marks the page, so that a reload would show. */
-  async open(): Promise<void> {
-    await this.page.goto('/clinic/en/this-morning');
+  async open(language: ClinicLanguage = 'en'): Promise<void> {
+    await this.page.goto(`/clinic/${language}/this-morning`);
     await this.page.evaluate(() => Object.assign(globalThis, { isSamePage: true }));
   }
 
@@ -26,8 +28,12 @@ export class ThisMorningScreen {
     return this.row(name).locator('.said');
   }
 
-  private press(name: string, act: string | RegExp): Promise<void> {
-    return this.row(name).getByRole('button', { name: act }).click();
+  /** Presses one of these, by their English words; the child's name follows them. */
+  private press(name: string, ...acts: readonly string[]): Promise<void> {
+    const named = acts.map((act) => sayLike(this.page, act).source).join('|');
+    return this.row(name)
+      .getByRole('button', { name: new RegExp(named) })
+      .click();
   }
 
   /** From the door to home, as the nurse's screen leads through it. */
@@ -36,24 +42,26 @@ export class ThisMorningScreen {
     { label, broughtBy }: { label: string; broughtBy: string },
   ): Promise<void> {
     const row = this.row(name);
-    await this.press(name, /^Arrived/);
-    await this.press(name, /^Door check/);
-    await row.getByLabel(/^Nothing since/).check();
-    await row.getByLabel('None', { exact: true }).check();
-    await row.getByLabel('Well', { exact: true }).check();
+    const exactly = (english: string) => row.getByLabel(say(this.page, english), { exact: true });
+    const button = (english: string) => row.getByRole('button', { name: say(this.page, english) });
+    await this.press(name, 'Arrived');
+    await this.press(name, 'Door check');
+    await row.getByLabel(sayLike(this.page, 'Nothing since {}')).check();
+    await exactly('None').check();
+    await exactly('Well').check();
     await row.getByLabel(new RegExp(broughtBy)).check();
-    await row.getByRole('button', { name: 'Keep this door check' }).click();
-    await this.press(name, /^Begin in Room|^Collect now/);
-    await this.press(name, /^Collected/);
-    await row.getByLabel('Volume, mL').fill('6.5');
-    await row.getByLabel('Neutralised now').check();
-    await row.getByLabel('With', { exact: true }).fill('sodium carbonate');
-    await row.getByRole('button', { name: 'Keep: collected' }).click();
-    await this.press(name, /^Label scanned/);
-    await row.getByLabel(/scan the label/).fill(label);
-    await row.getByRole('button', { name: 'Keep this label' }).click();
-    await this.press(name, /^Fed/);
-    await this.press(name, /^Gone home/);
-    await expect(row.getByText('Gone home.')).toBeVisible();
+    await button('Keep this door check').click();
+    await this.press(name, 'Begin in {}', 'Collect now');
+    await this.press(name, 'Collected');
+    await row.getByLabel(say(this.page, 'Volume, mL')).fill('6.5');
+    await row.getByLabel(say(this.page, 'Neutralised now')).check();
+    await exactly('With').fill('sodium carbonate');
+    await button('Keep: collected').click();
+    await this.press(name, 'Label scanned');
+    await row.getByLabel(say(this.page, '{}: scan the label', name)).fill(label);
+    await button('Keep this label').click();
+    await this.press(name, 'Fed');
+    await this.press(name, 'Gone home');
+    await expect(row.getByText(say(this.page, 'Gone home.'))).toBeVisible();
   }
 }

@@ -5,7 +5,9 @@ import {
   type BrowserContextOptions,
   type Page,
 } from '@playwright/test';
+import type { ClinicLanguage } from '../../../shared/languages/clinic-languages';
 import { CleanConsole } from './clean-console';
+import { say } from './frame-words';
 import { House, password, signInOf, type Who } from './house';
 
 export { expect };
@@ -13,7 +15,7 @@ export { expect };
 /** Opens the browsers of the people in a walk; all of their consoles are watched. */
 export interface People {
   /** A signed-in member of staff at a desk. */
-  readonly staff: (who: Who) => Promise<Page>;
+  readonly staff: (who: Who, language?: ClinicLanguage) => Promise<Page>;
   /** A family's phone: narrow, touch, nothing known yet. */
   readonly phone: (options?: BrowserContextOptions) => Promise<Page>;
   /** A visitor at a desk who is not signed in. */
@@ -54,9 +56,9 @@ export const test = base.extend<Fixtures>({
       return context.newPage();
     };
     await use({
-      staff: async (who) => {
+      staff: async (who, language) => {
         const page = await open(desk);
-        await signIn(page, who);
+        await signIn(page, who, language);
         return page;
       },
       phone: (options) => open({ ...phone, ...options }),
@@ -66,18 +68,18 @@ export const test = base.extend<Fixtures>({
   },
 });
 
-export async function signIn(page: Page, who: Who): Promise<void> {
-  await page.goto('/clinic/en/sign-in');
-  await page.getByLabel('E-mail').fill(signInOf(who));
-  await page.getByLabel('Password').fill(password);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await expect(page.getByRole('button', { name: 'Sign out' })).toBeVisible();
+export async function signIn(page: Page, who: Who, language: ClinicLanguage = 'en'): Promise<void> {
+  await page.goto(`/clinic/${language}/sign-in`);
+  await page.getByLabel(say(page, 'E-mail')).fill(signInOf(who));
+  await page.getByLabel(say(page, 'Password')).fill(password);
+  await page.getByRole('button', { name: say(page, 'Sign in') }).click();
+  await expect(page.getByRole('button', { name: say(page, 'Sign out') })).toBeVisible();
 }
 
-/** Goes to a screen by its word in the menu, without a new page load. */
+/** Goes to a screen by its English word in the menu, without a new page load. */
 export async function toScreen(page: Page, word: string): Promise<void> {
   await page
-    .getByRole('navigation', { name: 'Screens' })
-    .getByRole('link', { name: word, exact: true })
+    .getByRole('navigation', { name: say(page, 'Screens') })
+    .getByRole('link', { name: say(page, word), exact: true })
     .click();
 }

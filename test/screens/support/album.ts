@@ -1,9 +1,9 @@
 import { mkdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
-import type { Browser, BrowserContext, Page } from '@playwright/test';
+import type { Browser, BrowserContext, Locator, Page } from '@playwright/test';
 import { expect } from '../../e2e/support/walk';
 import { contactSheet, type Picture } from './contact-sheet';
-import { viewsOf, type View } from './views';
+import { onPaper, viewsOf, type View } from './views';
 
 const folder = join(__dirname, '..', '..', '..', 'test-results', 'screens');
 
@@ -21,6 +21,8 @@ export interface Screen {
   readonly media?: 'print';
   /** With the few colours that the reader's system has. */
   readonly hasForcedColors?: boolean;
+  /** 2 for text of twice the size. */
+  readonly textSize?: number;
 }
 
 interface Pages {
@@ -82,7 +84,10 @@ export class Album {
   }
 
   async shoot(screen: Screen): Promise<void> {
-    const all = viewsOf(counted, this.languages);
+    const all =
+      screen.media === 'print'
+        ? onPaper(this.languages, this.group.startsWith('clinic'))
+        : viewsOf(counted, this.languages);
     counted += 1;
     for (const view of screen.views?.(all) ?? all) await this.take(screen, view);
   }
@@ -122,7 +127,8 @@ export class Album {
     await this.speak(language);
     await screen.before?.(language);
     await page.goto(screen.address(language), { waitUntil: 'commit' });
-    await page.locator('h1, .skeleton, .waiting').first().waitFor();
+    await standing(page).waitFor();
+    if (screen.textSize !== undefined) await enlarge(page, screen.textSize);
     if (!screen.isWaiting) await settled(page);
     // The family's pages hold no line open: they have everything when nothing is on its way.
     if (!screen.isWaiting && !page.url().includes('/clinic/'))
@@ -130,6 +136,9 @@ export class Album {
     await screen.prepare?.(page);
     if (!screen.isWaiting) await settled(page);
     if (screen.media) await page.emulateMedia({ media: screen.media, colorScheme: 'light' });
+    // What sticks to the foot of the window stands at the foot of the picture, not across its middle.
+    if (!screen.isWaiting)
+      await page.setViewportSize({ width, height: await heightOf(page, height) });
     const name = `${screen.name}.${width}.${language}.${scheme}`;
     const wide = await page.evaluate(() => document.documentElement.scrollWidth);
     if (wide > width && !screen.media) this.overflows.push(`${name}: ${wide}`);
@@ -148,8 +157,26 @@ function keepWorkerOut(context: BrowserContext): Promise<unknown> {
   });
 }
 
+/** As a reader sets it for the whole browser: every size of ours follows that of the root. */
+async function enlarge(page: Page, times: number): Promise<void> {
+  await page.evaluate((factor) => {
+    const { style } = document.documentElement;
+    style.fontSize = `${parseFloat(getComputedStyle(document.documentElement).fontSize) * factor}px`;
+  }, times);
+}
+
+/** Of the whole page, at least that of the window; a browser draws no picture of more than some 16 000 pixels. */
+async function heightOf(page: Page, least: number): Promise<number> {
+  const whole = await page.evaluate(() => document.documentElement.scrollHeight);
+  return Math.min(Math.max(whole, least), 16_000);
+}
+
+/** A heading, the shape of what comes, or what failed; a page may have its heading from the answer. */
+const standing = (page: Page): Locator =>
+  page.locator('h1, .skeleton, .waiting, .failed').filter({ visible: true }).first();
+
 async function settled(page: Page): Promise<void> {
   await expect(page.locator('.skeleton, td-sheet-states .waiting')).toHaveCount(0);
-  await page.locator('h1').first().waitFor();
+  await standing(page).waitFor();
   await page.evaluate(() => document.fonts.ready.then(() => undefined));
 }

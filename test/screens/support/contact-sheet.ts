@@ -8,7 +8,15 @@ export interface Picture {
 }
 
 /** How wide a picture stands on the sheet, by the width of the window it was taken in. */
-const shown: Record<number, number> = { 320: 210, 390: 250, 768: 330, 1280: 460, 1920: 560 };
+const shown: Record<number, number> = {
+  320: 210,
+  390: 250,
+  710: 420,
+  768: 330,
+  973: 520,
+  1280: 460,
+  1920: 560,
+};
 
 /** A page with one row a screen; each picture leads to itself in full size. */
 export function contactSheet(title: string, pictures: readonly Picture[]): string {
@@ -22,7 +30,7 @@ export function contactSheet(title: string, pictures: readonly Picture[]): strin
   return `<!doctype html><html lang="en"><meta charset="utf-8"><title>${title}</title><style>
 body{font:14px system-ui,sans-serif;margin:12px;background:#777;color:#fff}
 h2{font-size:16px;margin:16px 0 4px}div{display:flex;gap:12px;align-items:start}
-figure{margin:0}a{display:block;max-height:640px;overflow:hidden;border:1px solid #000}
+figure{margin:0}a{display:block;max-height:900px;overflow:hidden;border:1px solid #000}
 img{display:block;width:100%}figcaption{font-size:12px}
 </style><h1>${title}</h1>${rows.join('')}</html>`;
 }

@@ -42,3 +42,27 @@ export function viewsOf(number: number, languages: readonly string[]): readonly 
     scheme: schemes[(index + turn) % 2] ?? 'light',
   }));
 }
+
+/** A window of 1280 x 1024 at 400 %: what is left is 320 x 256. */
+export const zoomed = (views: readonly View[]): readonly View[] =>
+  views.filter(({ width }) => width === 320).map((view) => ({ ...view, height: 256 }));
+
+/** Telephones, whose layout stays when a reader makes the text larger; at a desk the layout follows the text. */
+export const inHand = (views: readonly View[]): readonly View[] =>
+  views.filter(({ width }) => width < 700);
+
+/** The telephone and the desk. */
+export const handAndDesk = (views: readonly View[]): readonly View[] =>
+  views.filter(({ width }) => width === 390 || width === 1280);
+
+/**
+ * What a sheet of letter paper has between its margins, at 96 pixels to the inch; each language once. Families get it
+ * upright, the clinic across.
+ */
+export const onPaper = (languages: readonly string[], isAcross: boolean): readonly View[] =>
+  languages.map((language) => ({
+    width: isAcross ? 973 : 710,
+    height: isAcross ? 733 : 950,
+    language,
+    scheme: 'dark',
+  }));

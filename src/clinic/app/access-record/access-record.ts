@@ -14,6 +14,7 @@ import { ClinicUser } from '../../../common/session/clinic-user';
 import { MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import { deedSays, matterSays } from './matter-words';
 
 /** Who saw and changed what about which child, when and from where. */
 @Component({
@@ -32,6 +33,8 @@ export class AccessRecord {
   protected readonly loaded = new Loaded(() =>
     this.client.accessRecord(Number.isNaN(this.child()) ? {} : { childId: this.child() }),
   );
+  protected readonly says = matterSays;
+  protected readonly deed = deedSays;
   protected readonly rows = computed(() => this.loaded.value()?.rows ?? []);
 
   constructor() {

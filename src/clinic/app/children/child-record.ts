@@ -22,11 +22,12 @@ import { Loaded } from '../../../common/ui/loaded';
 import { PhonePipe } from '../../../common/ui/phone-words';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
 import { cautionSays, feedingSays } from './child-words';
+import { OwnPlanSummary } from './own-plan-summary';
 
 /** One child: family, orders, series, and everything that happened in one column of time. */
 @Component({
   selector: 'td-child-record',
-  imports: [RouterLink, SheetStates, DayPipe, MomentPipe, PhonePipe],
+  imports: [RouterLink, SheetStates, DayPipe, MomentPipe, OwnPlanSummary, PhonePipe],
   templateUrl: './child-record.html',
   styleUrl: './child-record.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -48,6 +49,7 @@ export class ChildRecordScreen {
   protected readonly mayWrite = computed(() => this.user.has('children.write'));
   protected readonly mayOrder = computed(() => this.user.has('orders.write'));
   protected readonly mayPlan = computed(() => this.user.has('series.plan'));
+  protected readonly maySeePlan = computed(() => this.user.has('orders.read'));
   protected readonly maySeeAccess = computed(() => this.user.has('access-record.read'));
   protected readonly feedingSays = feedingSays;
   protected readonly cautions = computed(() =>

@@ -17,6 +17,12 @@ export const routes: Routes = [
     loadComponent: () => import('./child-record').then((file) => file.ChildRecordScreen),
   },
   {
+    path: ':childId/plan',
+    title,
+    canActivate: [needsRight('individual-plans.sign')],
+    loadComponent: () => import('./own-plan').then((file) => file.OwnPlan),
+  },
+  {
     path: ':childId/family-members/new',
     title,
     canActivate: [needsRight('children.write')],

@@ -9,11 +9,12 @@ import { ClinicUser } from '../../../common/session/clinic-user';
 import { MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import { StateMark } from '../../../common/ui/state-mark/state-mark';
 
 /** Letters to write, to release, released; and who has opened them. */
 @Component({
   selector: 'td-letters',
-  imports: [SheetStates, RouterLink, MomentPipe],
+  imports: [SheetStates, StateMark, RouterLink, MomentPipe],
   templateUrl: './letters.html',
   styleUrl: './letters.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

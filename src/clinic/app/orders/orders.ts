@@ -5,11 +5,12 @@ import { ClinicUser } from '../../../common/session/clinic-user';
 import { MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import { StateMark } from '../../../common/ui/state-mark/state-mark';
 
 /** Orders and what still stands between each and its mornings. */
 @Component({
   selector: 'td-orders',
-  imports: [RouterLink, SheetStates, MomentPipe],
+  imports: [RouterLink, SheetStates, StateMark, MomentPipe],
   template: `
     <div class="lead">
       <h1 tabindex="-1" i18n="@@clinic.orders.heading">Orders</h1>
@@ -27,10 +28,14 @@ import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
             </div>
             <div>
               @for (line of order.stillNeeded; track line) {
-                <p class="is-care">{{ line }}</p>
+                <p class="is-care"><td-state-mark name="todo" /> {{ line }}</p>
               } @empty {
                 @if (order.seriesId) {
-                  <p class="is-well" i18n="@@clinic.orders.planned">Planned</p>
+                  <p class="is-well">
+                    <td-state-mark name="yes" />&ngsp;<ng-container i18n="@@clinic.orders.planned"
+                      >Planned</ng-container
+                    >
+                  </p>
                 } @else {
                   <a
                     class="do first"

@@ -6,13 +6,14 @@ import { ClinicSessionClient } from '../../../common/api/clinic/clinic-session-c
 import { ClinicUser } from '../../../common/session/clinic-user';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import { StateMark } from '../../../common/ui/state-mark/state-mark';
 import { roleSays, roleWords } from './role-words';
 import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 
 /** Staff accounts and their roles. */
 @Component({
   selector: 'td-people',
-  imports: [ReactiveFormsModule, SheetStates],
+  imports: [ReactiveFormsModule, SheetStates, StateMark],
   templateUrl: './people.html',
   styleUrl: './people.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,

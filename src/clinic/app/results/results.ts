@@ -10,12 +10,14 @@ import { ClinicUser } from '../../../common/session/clinic-user';
 import { DayPipe, MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import type { MarkName } from '../../../common/ui/state-mark/mark-shapes';
+import { StateMark } from '../../../common/ui/state-mark/state-mark';
 import { EnterResult } from './enter-result';
 
 /** Series with results or waiting for them, the most dangerous first. */
 @Component({
   selector: 'td-results',
-  imports: [SheetStates, EnterResult, RouterLink, DayPipe, MomentPipe],
+  imports: [SheetStates, StateMark, EnterResult, RouterLink, DayPipe, MomentPipe],
   templateUrl: './results.html',
   styleUrl: './results.scss',
   changeDetection: ChangeDetectionStrategy.OnPush,
@@ -44,6 +46,14 @@ export class Results {
         takeUntilDestroyed(),
       )
       .subscribe(() => void this.loaded.again());
+  }
+
+  /** Neither positive nor negative has a shape of its own, so that it is not taken for either. */
+  protected markOf({ value, isCritical }: { value: string; isCritical: boolean }): MarkName {
+    if (isCritical) return 'ceiling';
+    if (value === 'invalid' || value === 'contaminated' || value === 'not-tuberculous')
+      return 'unsure';
+    return value === 'no-growth-yet' ? 'wait' : 'none';
   }
 
   protected open(specimenId: number | null): void {

@@ -14,41 +14,44 @@ import type {
   PlanSeriesRequest,
   PreviewSeriesAnswer,
   ProposedRun,
+  UsualNightAnswer,
 } from '../../../../shared/contracts/series';
-import { ChildrenClient } from '../../../common/api/clinic/children-client';
 import { clinicFailure } from '../../../common/api/clinic/clinic-http';
-import { SeriesClient } from '../../../common/api/clinic/series-client';
+import { nextOffersIn, SeriesClient } from '../../../common/api/clinic/series-client';
 import { ClinicClock } from '../../../common/session/clinic-clock';
 import { ClinicUser } from '../../../common/session/clinic-user';
-import { dayIn, DayPipe, MomentPipe } from '../../../common/ui/clinic-times';
+import { DayPipe, MomentPipe } from '../../../common/ui/clinic-times';
 import { Loaded } from '../../../common/ui/loaded';
 import { SheetStates } from '../../../common/ui/sheet-states/sheet-states';
+import { NightFeeds } from './night-feeds';
+import { PlanFamily } from './plan-family';
 import { RunWeeks } from './run-weeks';
+import { isSameRun } from './same-run';
 
-interface Escort {
-  readonly id: number;
-  readonly says: string;
-  readonly mayConsent: boolean;
-}
+type Query = 'from' | 'mornings' | 'orders' | 'weeks' | 'ride' | 'apart';
 
 /** Choose a run of mornings in a row: runs with places left, refused days with their reason, what the family is told. */
 @Component({
   selector: 'td-plan-series',
-  imports: [RouterLink, SheetStates, RunWeeks, DayPipe, MomentPipe],
+  imports: [RouterLink, SheetStates, RunWeeks, NightFeeds, DayPipe, MomentPipe],
   templateUrl: './plan-series.html',
   styleUrl: './plan-series.scss',
+  providers: [PlanFamily],
   changeDetection: ChangeDetectionStrategy.OnPush,
 })
 export class PlanSeries {
   private readonly client = inject(SeriesClient);
-  private readonly childrenClient = inject(ChildrenClient);
   private readonly router = inject(Router);
   private readonly clock = inject(ClinicClock);
+  protected readonly family = inject(PlanFamily);
 
-  /** Ids of the orders planned together, '12' or '12,13'; from the address, like the two choices below. */
+  /** Ids of the orders planned together, '12' or '12,13'; from the address, like the choices below. */
   readonly orders = input.required<string>();
   readonly from = input<string>();
   readonly mornings = input<string>();
+  readonly weeks = input<string>();
+  readonly ride = input<string>();
+  readonly apart = input<string>();
 
   protected readonly zone = inject(ClinicUser).zone;
   protected readonly orderIds = computed(() =>
@@ -57,46 +60,61 @@ export class PlanSeries {
   protected readonly today = computed(() => localDay(this.clock.now(), this.zone()));
   protected readonly fromDay = computed(() => this.from() ?? this.today());
   protected readonly morningsPlanned = computed(() => Number(this.mornings() ?? 3));
+  protected readonly weeksAhead = computed(() => Number(this.weeks() ?? 4));
   protected readonly loaded = new Loaded(() =>
     this.client.propose({
       orderIds: this.orderIds(),
       from: this.fromDay(),
       morningsPlanned: this.morningsPlanned(),
+      weeks: this.weeksAhead(),
+      needsRide: this.ride() === 'yes',
+      siblingsMayPart: this.apart() === 'yes',
+      nights: this.nights(),
     }),
   );
   protected readonly proposal = this.loaded.value;
   protected readonly chosen = signal<ProposedRun | null>(null);
   protected readonly preview = signal<PreviewSeriesAnswer | null>(null);
-  protected readonly escorts = signal<readonly Escort[]>([]);
   /** Who brings the children, by day. */
   protected readonly brings = signal<ReadonlyMap<string, number>>(new Map());
+  /** What was told about the nights on this screen. */
+  private readonly nights = signal<UsualNightAnswer[]>([]);
   protected readonly isBusy = signal(false);
   protected readonly failure = signal<string | null>(null);
   protected readonly planned = signal<PlanSeriesAnswer | null>(null);
   protected readonly names = computed(() =>
     (this.proposal()?.children ?? []).map((child) => `${child.fullName}, ${child.ageInWords}`),
   );
-  protected readonly siblings = signal<
-    readonly { readonly orderId: number; readonly says: string }[]
-  >([]);
 
   constructor() {
     effect(() => {
       this.orderIds();
       this.fromDay();
       this.morningsPlanned();
+      this.weeksAhead();
+      this.ride();
+      this.apart();
       untracked(() => void this.propose());
     });
   }
 
   protected choose(run: ProposedRun): void {
     this.chosen.set(run);
+    this.preview.set(null);
     this.failure.set(null);
     void this.look(run);
   }
 
-  protected change(query: { from?: string; mornings?: string; orders?: string }): void {
+  protected change(query: Partial<Record<Query, string | null>>): void {
     void this.router.navigate([], { queryParams: query, queryParamsHandling: 'merge' });
+  }
+
+  protected tell(childId: number, night: Omit<UsualNightAnswer, 'childId'>): void {
+    this.nights.update((nights) => [
+      ...nights.filter((one) => one.childId !== childId),
+      { childId, ...night },
+    ]);
+    void this.propose();
   }
 
   protected bring(on: string, familyMemberId: string): void {
@@ -110,7 +128,7 @@ export class PlanSeries {
 
   protected cannotConsent(on: string): boolean {
     const id = this.brings().get(on);
-    return this.escorts().some((escort) => escort.id === id && !escort.mayConsent);
+    return this.family.escorts().some((escort) => escort.id === id && !escort.mayConsent);
   }
 
   protected async plan(run: ProposedRun): Promise<void> {
@@ -122,41 +140,30 @@ export class PlanSeries {
     } catch (error) {
       const failure = clinicFailure(error);
       this.failure.set([failure.message, failure.problem?.detail ?? ''].join(' ').trim());
-      if (failure.status === 409) await this.propose();
+      const left = nextOffersIn(failure);
+      if (left) {
+        this.loaded.show(left);
+        this.keepChoice(run);
+      } else if (failure.status === 409) await this.propose();
     } finally {
       this.isBusy.set(false);
     }
   }
 
   private async propose(): Promise<void> {
-    this.chosen.set(null);
-    this.preview.set(null);
+    const before = this.chosen();
     await this.loaded.again();
+    this.keepChoice(before);
     const [child] = this.proposal()?.children ?? [];
-    if (child) await this.learnFamily(child.childId);
+    if (child) await this.family.learn(child.childId, this.orderIds());
   }
 
-  private async learnFamily(childId: number): Promise<void> {
-    try {
-      const record = await this.childrenClient.record(childId);
-      this.escorts.set(
-        record.familyMembers.map((member) => ({
-          id: member.id,
-          says: `${member.fullName}, ${member.relationship}`,
-          mayConsent: member.mayConsent,
-        })),
-      );
-      const { orders } = await this.childrenClient.orders();
-      const siblings = new Set(record.siblings.map((sibling) => sibling.id));
-      this.siblings.set(
-        orders
-          .filter((order) => siblings.has(order.childId) && order.stillNeeded.length === 0)
-          .filter((order) => order.seriesId === null && !this.orderIds().includes(order.id))
-          .map((order) => ({ orderId: order.id, says: order.childName })),
-      );
-    } catch {
-      // Without the family the mornings can still be chosen; who brings the child is asked later.
-    }
+  /** The run that was chosen, where a new search still has it; what was typed stays in any case. */
+  private keepChoice(before: ProposedRun | null): void {
+    const same = before && this.proposal()?.runs.find((run) => isSameRun(run, before));
+    this.chosen.set(same ?? null);
+    this.preview.set(null);
+    if (same) void this.look(same);
   }
 
   private async look(run: ProposedRun): Promise<void> {
@@ -168,19 +175,17 @@ export class PlanSeries {
     }
   }
 
-  private request(run: ProposedRun): PlanSeriesRequest {
-    const days = new Set(run.days.map((day) => day.on));
+  private request({ days }: ProposedRun): PlanSeriesRequest {
+    const planned = new Set(days.map((day) => day.on));
     return {
       orderIds: this.orderIds(),
-      days: run.days,
+      days,
+      nights: this.nights(),
+      needsRide: this.ride() === 'yes',
       escorts: [...this.brings()]
-        .filter(([on]) => days.has(on))
+        .filter(([on]) => planned.has(on))
         .map(([on, familyMemberId]) => ({ on, familyMemberId })),
     };
-  }
-
-  protected dayOf(at: string): string {
-    return dayIn(at, this.zone());
   }
 }
 

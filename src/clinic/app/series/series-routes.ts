@@ -1,10 +1,14 @@
 import type { Routes } from '@angular/router';
-import { PlanSeries } from './plan-series';
 
 export const routes: Routes = [
   {
     path: 'plan',
     title: $localize`:@@clinic.title.plan:Plan · Threedawn`,
-    component: PlanSeries,
+    loadComponent: () => import('./plan-series').then((file) => file.PlanSeries),
+  },
+  {
+    path: 'replan',
+    title: $localize`:@@clinic.title.replan:Re-plan · Threedawn`,
+    loadComponent: () => import('./replan-series').then((file) => file.ReplanSeries),
   },
 ];

@@ -80,7 +80,11 @@ export class ChildRow {
   /** The suggestion is a frame and a tab; the row keeps its place. */
   readonly isNext = input(false);
 
-  protected readonly opened = signal<{ form: OpenForm; version: number } | null>(null);
+  protected readonly opened = signal<{
+    form: OpenForm;
+    version: number;
+    roomId: number;
+  } | null>(null);
   protected readonly now = this.clock.time;
   protected readonly arrival = computed(() => arrivalWords(this.row(), this.now()));
   protected readonly verdict = computed(() => verdictWords(this.row(), this.now()));
@@ -89,6 +93,10 @@ export class ChildRow {
   /** What was said last decides; a family that corrects itself often must not push the others off the screen. */
   protected readonly saidLast = computed(() => this.row().said.slice(-shownAnswers));
   protected readonly saidBefore = computed(() => this.row().said.slice(0, -shownAnswers));
+  /** Rule, inputs and source as lines; drawn only when somebody opens them. */
+  protected readonly explains = computed(() =>
+    this.row().explains.flatMap(({ says }) => (says === undefined ? [] : [says])),
+  );
   protected readonly stops = computed(() => stopWords(this.row(), this.now()));
   protected readonly isLate = computed(() => minutesLate(this.row()) > 0);
   protected readonly isDone = computed(() =>
@@ -109,7 +117,7 @@ export class ChildRow {
   });
   protected readonly shortAsk = computed<ShortAsk | null>(() => {
     const form = this.opened()?.form;
-    return form === 'not-collected' || form === 'neutralise' || form === 'label' ? form : null;
+    return form === undefined || form === 'door-check' || form === 'collected' ? null : form;
   });
 
   /** Brings the row under the reader's eyes and its next step under the finger. */
@@ -141,8 +149,13 @@ export class ChildRow {
       case 'not-collected':
       case 'neutralise':
       case 'label':
+      case 'go-on':
         this.board.forgetNote(row.morningId);
-        this.opened.set({ form: offer.act, version: row.version });
+        this.opened.set({
+          form: offer.act,
+          version: row.version,
+          roomId: offer.roomId ?? row.room.id,
+        });
     }
   }
 
@@ -157,12 +170,15 @@ export class ChildRow {
   protected async keepShort(ask: ShortAsk, text: string): Promise<void> {
     const row = this.row();
     const { version } = row;
+    const roomId = this.opened()?.roomId ?? row.room.id;
     const isKept =
-      ask === 'not-collected'
-        ? await this.board.end(row, { version, outcome: 'not-collected', reason: text })
-        : ask === 'neutralise'
-          ? await this.board.neutralise(row, text)
-          : await this.board.label(row, text);
+      ask === 'go-on'
+        ? await this.board.begin(row, roomId, text)
+        : ask === 'not-collected'
+          ? await this.board.end(row, { version, outcome: 'not-collected', reason: text })
+          : ask === 'neutralise'
+            ? await this.board.neutralise(row, text)
+            : await this.board.label(row, text);
     this.closeIf(isKept);
   }
 

@@ -19,8 +19,12 @@ import { clockIn } from '../../../common/ui/clinic-times';
 import {
   doorCheckRequestOf,
   doorCheckStart,
+  drinkItems,
   emptyDoorCheck,
   fieldOf,
+  isDrink,
+  isMeal,
+  mealItems,
   somebodyElse,
   type DoorCheckFaults,
 } from './door-check-request';
@@ -57,6 +61,12 @@ export class DoorCheckForm implements OnInit {
     { requireSync: true },
   );
   protected readonly somebodyElse = somebodyElse;
+  protected readonly items = [...mealItems, ...drinkItems].map((value) => ({
+    value,
+    says: itemWords[value],
+  }));
+  protected readonly isMeal = computed(() => isMeal(this.values().intake));
+  protected readonly isDrink = computed(() => isDrink(this.values().intake));
   private readonly missing = signal<DoorCheckFaults>({});
   protected readonly faults = computed<DoorCheckFaults>(() => ({
     ...Object.fromEntries([...this.refused()].map(([path, says]) => [fieldOf(path), says])),
@@ -103,3 +113,15 @@ export class DoorCheckForm implements OnInit {
     );
   }
 }
+
+const itemWords: Readonly<
+  Record<(typeof mealItems)[number] | (typeof drinkItems)[number], string>
+> = {
+  'breast-milk': $localize`:@@clinic.door.item.breast-milk:Breast milk`,
+  formula: $localize`:@@clinic.door.item.formula:Formula`,
+  'cows-milk': $localize`:@@clinic.door.item.cows-milk:Cow’s milk`,
+  'solid-food': $localize`:@@clinic.door.item.solid-food:Food`,
+  'tube-feed': $localize`:@@clinic.door.item.tube-feed:Tube feed`,
+  water: $localize`:@@clinic.door.item.water:Water only`,
+  other: $localize`:@@clinic.door.item.other:Another drink`,
+};

@@ -27,11 +27,11 @@ describe('what the form starts with', () => {
     [{ answer: 'nothing', lastIntakeAt: null }, { intake: 'nothing' }],
     [
       { answer: 'feed', lastIntakeAt: '2027-04-06T07:40:00.000Z' },
-      { intake: 'later', lastFood: '02:40', lastDrink: '' },
+      { intake: 'breast-milk', lastFood: '02:40', lastDrink: '' },
     ],
     [
       { answer: 'sip', lastIntakeAt: '2027-04-06T09:00:00.000Z' },
-      { intake: 'later', lastFood: '', lastDrink: '04:00' },
+      { intake: 'water', lastFood: '', lastDrink: '04:00' },
     ],
     [{ answer: 'feed', lastIntakeAt: null }, { intake: 'unknown' }],
     [{ answer: 'unsure', lastIntakeAt: null }, { intake: 'unknown' }],
@@ -55,11 +55,14 @@ describe('the request', () => {
       request: {
         version: 3,
         lastFoodAt: null,
+        foodItem: null,
         lastDrinkAt: null,
+        drinkItem: null,
         isNothingSincePlan: true,
         medicine: null,
         wokeAt: null,
         isWell: true,
+        bloodGlucoseMgDl: null,
         broughtBy: 'mother, Marta Tesfaye',
         goOnReason: null,
       },
@@ -68,12 +71,14 @@ describe('the request', () => {
 
   test('times of last evening and of this morning', () => {
     expect(
-      requestOf({ intake: 'later', lastFood: '20:10', lastDrink: '02:40', woke: '05:05' }),
+      requestOf({ intake: 'solid-food', lastFood: '20:10', lastDrink: '02:40', woke: '05:05' }),
     ).toMatchObject({
       request: {
         isNothingSincePlan: false,
         lastFoodAt: '2027-04-06T01:10:00.000Z',
+        foodItem: 'solid-food',
         lastDrinkAt: '2027-04-06T07:40:00.000Z',
+        drinkItem: 'water',
         wokeAt: '2027-04-06T10:05:00.000Z',
       },
     });
@@ -81,6 +86,33 @@ describe('the request', () => {
 
   test('times typed before the answer was changed to "nothing" are not sent', () => {
     expect(requestOf({ lastFood: '20:10' })).toMatchObject({ request: { lastFoodAt: null } });
+  });
+
+  test('a sip of water is no meal, another drink is no water', () => {
+    expect(requestOf({ intake: 'water', lastDrink: '04:00' })).toMatchObject({
+      request: { lastFoodAt: null, foodItem: null, drinkItem: 'water' },
+    });
+    expect(
+      requestOf({ intake: 'other', lastDrink: '04:00', lastFood: '21:00', glucose: ' 88 ' }),
+    ).toMatchObject({
+      request: {
+        lastFoodAt: '2027-04-06T02:00:00.000Z',
+        foodItem: null,
+        drinkItem: 'other',
+        bloodGlucoseMgDl: 88,
+      },
+    });
+  });
+
+  test('each thing needs its own time, a glucose its number', () => {
+    const faultsOf = (more: Partial<DoorCheckValues>) => {
+      const open = requestOf(more);
+      return 'faults' in open ? Object.keys(open.faults) : [];
+    };
+    expect(faultsOf({ intake: 'water', lastFood: '21:00' })).toEqual(['lastDrink']);
+    expect(faultsOf({ intake: 'formula', lastDrink: '04:00' })).toEqual(['lastFood']);
+    expect(faultsOf({ glucose: 'high' })).toEqual(['glucose']);
+    expect(faultsOf({ glucose: '5' })).toEqual(['glucose']);
   });
 
   test('each missing answer has its sentence beside its field', () => {
@@ -95,7 +127,7 @@ describe('the request', () => {
 
   test('"somebody else" needs a name, "given" a medicine, "time known" a time', () => {
     const missing = requestOf({
-      intake: 'later',
+      intake: 'solid-food',
       medicine: 'given',
       broughtBy: somebodyElse,
     });
@@ -119,13 +151,13 @@ describe('the night when the clock goes back (7 November 2027 in Chicago)', () =
   });
 
   test('the nurse says which one before it is sent', () => {
-    const open = requestOf({ intake: 'later', lastFood: '01:30' }, morning);
+    const open = requestOf({ intake: 'solid-food', lastFood: '01:30' }, morning);
     expect('faults' in open && open.faults['lastFood']).toMatch(/twice/);
     expect(
-      requestOf({ intake: 'later', lastFood: '01:30', lastFoodReading: 'earlier' }, morning),
+      requestOf({ intake: 'solid-food', lastFood: '01:30', lastFoodReading: 'earlier' }, morning),
     ).toMatchObject({ request: { lastFoodAt: '2027-11-07T06:30:00.000Z' } });
     expect(
-      requestOf({ intake: 'later', lastFood: '01:30', lastFoodReading: 'later' }, morning),
+      requestOf({ intake: 'solid-food', lastFood: '01:30', lastFoodReading: 'later' }, morning),
     ).toMatchObject({ request: { lastFoodAt: '2027-11-07T07:30:00.000Z' } });
   });
 
@@ -153,7 +185,7 @@ describe('the night when the clock goes forward (14 March 2027 in Chicago)', () 
       earlier: Date.parse('2027-03-14T07:30:00.000Z'),
       later: Date.parse('2027-03-14T08:30:00.000Z'),
     });
-    const open = requestOf({ intake: 'later', lastDrink: '02:30' }, morning);
+    const open = requestOf({ intake: 'water', lastDrink: '02:30' }, morning);
     expect('faults' in open && open.faults['lastDrink']).toMatch(/jumped/);
   });
 });

@@ -7,9 +7,27 @@ import { schemaSentence } from '../../../common/ui/form/schema-sentences';
 export type TimeField = 'lastFood' | 'lastDrink' | 'woke';
 export type Reading = 'earlier' | 'later';
 
+/** Meals and feeds first, then drinks that end no hunger: one tap says what the last thing was. */
+export const mealItems = [
+  'breast-milk',
+  'formula',
+  'cows-milk',
+  'solid-food',
+  'tube-feed',
+] as const;
+export const drinkItems = ['water', 'other'] as const;
+export type MealItem = (typeof mealItems)[number];
+export type DrinkItem = (typeof drinkItems)[number];
+export type Intake = '' | 'nothing' | 'unknown' | MealItem | DrinkItem;
+
+export const isMeal = (intake: Intake): intake is MealItem =>
+  (mealItems as readonly string[]).includes(intake);
+export const isDrink = (intake: Intake): intake is DrinkItem =>
+  (drinkItems as readonly string[]).includes(intake);
+
 /** What the form holds; empty text is "not asked yet". */
 export interface DoorCheckValues {
-  readonly intake: '' | 'nothing' | 'later' | 'unknown';
+  readonly intake: Intake;
   readonly lastFood: string;
   readonly lastFoodReading: '' | Reading;
   readonly lastDrink: string;
@@ -19,6 +37,7 @@ export interface DoorCheckValues {
   readonly woke: string;
   readonly wokeReading: '' | Reading;
   readonly well: '' | 'well' | 'not-well';
+  readonly glucose: string;
   readonly broughtBy: string;
   readonly broughtByOther: string;
   readonly goOnReason: string;
@@ -37,6 +56,7 @@ export const emptyDoorCheck: DoorCheckValues = {
   woke: '',
   wokeReading: '',
   well: '',
+  glucose: '',
   broughtBy: '',
   broughtByOther: '',
   goOnReason: '',
@@ -54,11 +74,22 @@ export function doorCheckStart(row: MorningRow, zone: string): DoorCheckValues {
     case 'unsure':
       return { ...start, intake: 'unknown' };
     case 'feed':
-      return { ...start, intake: time === '' ? 'unknown' : 'later', lastFood: time };
+      return { ...start, intake: time === '' ? 'unknown' : fedWith[row.feeding], lastFood: time };
     case 'sip':
-      return { ...start, intake: time === '' ? 'unknown' : 'later', lastDrink: time };
+      return { ...start, intake: time === '' ? 'unknown' : 'water', lastDrink: time };
   }
 }
+
+/** "Milk or food" at home is most likely this; where two are as likely the nurse taps one. */
+const fedWith: Readonly<Record<MorningRow['feeding'], Intake>> = {
+  breast: 'breast-milk',
+  formula: 'formula',
+  'breast-and-formula': '',
+  'family-food': 'solid-food',
+};
+
+const sayTime = (): string =>
+  $localize`:@@clinic.door.say-time:Give a time, or choose “Not known”.`;
 
 /** Sentences by field. */
 export type DoorCheckFaults = Readonly<Record<string, string>>;
@@ -69,7 +100,8 @@ export function doorCheckRequestOf(
   around: { readonly version: number; readonly now: Instant; readonly zone: string },
 ): { readonly request: DoorCheckRequest } | { readonly faults: DoorCheckFaults } {
   const faults: Record<string, string> = {};
-  const isLater = values.intake === 'later';
+  const { intake } = values;
+  const isKnown = isMeal(intake) || isDrink(intake);
   const time = (field: TimeField, isAsked: boolean): string | null => {
     if (!isAsked || values[field] === '') return null;
     const read = readField(values, field, around);
@@ -77,20 +109,21 @@ export function doorCheckRequestOf(
     faults[field] = read;
     return null;
   };
-  const lastFoodAt = time('lastFood', isLater);
-  const lastDrinkAt = time('lastDrink', isLater);
+  const lastFoodAt = time('lastFood', isKnown);
+  const lastDrinkAt = time('lastDrink', isKnown);
   const wokeAt = time('woke', true);
   if (values.intake === '')
     faults['intake'] =
       $localize`:@@clinic.door.say-intake:Say what the family tells about food and drink.`;
-  if (isLater && values.lastFood === '' && values.lastDrink === '')
-    faults['lastFood'] = $localize`:@@clinic.door.say-time:Give a time, or choose “Not known”.`;
+  if (isMeal(intake) && values.lastFood === '') faults['lastFood'] = sayTime();
+  if (isDrink(intake) && values.lastDrink === '') faults['lastDrink'] = sayTime();
   if (values.medicine === '')
     faults['medicine'] = $localize`:@@clinic.door.say-medicine:Say whether a medicine was given.`;
   if (values.medicine === 'given' && values.medicineSays.trim() === '')
     faults['medicineSays'] = $localize`:@@clinic.door.which-medicine:Which medicine, and when?`;
   if (values.well === '')
     faults['well'] = $localize`:@@clinic.door.say-well:Say whether the child is well today.`;
+  const glucose = values.glucose.trim() === '' ? null : Number(values.glucose.trim());
   const broughtBy =
     values.broughtBy === somebodyElse ? values.broughtByOther.trim() : values.broughtBy;
   if (broughtBy === '')
@@ -99,11 +132,15 @@ export function doorCheckRequestOf(
   const parsed = doorCheckRequest.safeParse({
     version: around.version,
     lastFoodAt,
+    foodItem: isMeal(intake) ? intake : null,
     lastDrinkAt,
+    // Beside a meal only water is asked for.
+    drinkItem: lastDrinkAt === null ? null : isDrink(intake) ? intake : 'water',
     isNothingSincePlan: values.intake === 'nothing',
     medicine: values.medicine === 'given' ? values.medicineSays : null,
     wokeAt,
     isWell: values.well === 'well',
+    bloodGlucoseMgDl: glucose,
     broughtBy,
     goOnReason: values.goOnReason,
   });
@@ -123,6 +160,7 @@ const fieldNames: Readonly<Record<string, string>> = {
   lastDrinkAt: 'lastDrink',
   wokeAt: 'woke',
   medicine: 'medicineSays',
+  bloodGlucoseMgDl: 'glucose',
 };
 /** The form's field that a request's path belongs to. */
 export const fieldOf = (path: string): string => fieldNames[path] ?? path;

@@ -85,8 +85,9 @@ export class MorningBoard {
     return this.change(row, () => this.client.checkAtDoor(row.morningId, request));
   }
 
-  begin(row: MorningRow, roomId: number): Promise<boolean> {
-    const request = { version: row.version, roomId };
+  /** Past the longest fast a clinician's reason goes with it. */
+  begin(row: MorningRow, roomId: number, ceilingReason: string | null = null): Promise<boolean> {
+    const request = { version: row.version, roomId, ceilingReason };
     return this.change(row, () => this.client.begin(row.morningId, request));
   }
 

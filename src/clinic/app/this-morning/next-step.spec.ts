@@ -29,7 +29,7 @@ test.each<[string, MorningRow, string[]]>([
   ['checked, not long enough', checkedRow({ readyAt: '2027-04-06T11:40:00.000Z' }), []],
   ['checked, cannot tell', checkedRow({ verdict: 'cannot-tell', readyAt: null }), ['begin']],
   ['near the longest fast', checkedRow({ ceiling: 'collect-or-feed' }), ['begin', 'feed']],
-  ['past the longest fast', checkedRow({ ceiling: 'feed' }), ['feed', 'door-check']],
+  ['past the longest fast', checkedRow({ ceiling: 'feed' }), ['feed', 'go-on']],
   ['fed before the collection', checkedRow({ fedAt: '2027-04-06T11:10:00.000Z' }), ['left']],
   ['in a room', checkedRow({ state: 'collecting' }), ['collected', 'not-collected']],
   ['collected', aRow({ state: 'collected', specimen: aSpecimen() }), ['neutralise', 'feed']],
@@ -86,7 +86,11 @@ test('the room is the suggested one, else the planned one when free, else the fi
   const roomOf = (more: Partial<Surroundings>): number | undefined =>
     nextStep(checkedRow(), { ...around, ...more }).offers[0]?.roomId;
   expect(roomOf({})).toBe(1);
-  expect(roomOf({ suggestion: { morningId: 4, roomId: 2, says: '' } })).toBe(2);
+  expect(
+    roomOf({
+      suggestion: { morningId: 4, roomId: 2, says: '', explains: { rule: '', inputs: {} } },
+    }),
+  ).toBe(2);
   expect(
     roomOf({
       rooms: [

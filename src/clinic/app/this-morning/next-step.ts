@@ -1,29 +1,9 @@
 import type { Right } from '../../../../shared/access/rights';
 import type { MorningRow, ThisMorning } from '../../../../shared/contracts/this-morning';
 import { clockIn } from '../../../common/ui/clinic-times';
-import { phoneWords } from '../../../common/ui/phone-words';
+import { begin, callsOf, offer, type Act, type Offer } from './offers';
 
-export type Act =
-  | 'arrive'
-  | 'door-check'
-  | 'begin'
-  | 'collected'
-  | 'not-collected'
-  | 'feed'
-  | 'neutralise'
-  | 'label'
-  | 'left'
-  | 'call';
-
-/** A step that the row offers. */
-export interface Offer {
-  readonly act: Act;
-  readonly says: string;
-  /** Under two choices of equal weight: what each leads to. */
-  readonly leadsTo?: string;
-  readonly roomId?: number;
-  readonly phone?: string;
-}
+export type { Act, Offer } from './offers';
 
 export interface NextStep {
   /** What is missing or comes next, in words. */
@@ -54,6 +34,7 @@ const rightsOfActs: Readonly<Record<Act, Right>> = {
   arrive: 'arrivals.write',
   'door-check': 'door-check.write',
   begin: 'collections.write',
+  'go-on': 'orders.sign',
   collected: 'collections.write',
   'not-collected': 'collections.write',
   feed: 'mornings.run',
@@ -181,11 +162,12 @@ function stepAtCeiling(row: MorningRow, { room, begins, again, zone }: AtCeiling
       offers: [
         feed,
         {
-          ...offer('door-check', $localize`:@@clinic.this-morning.go-on:Go on`),
-          leadsTo: $localize`:@@clinic.this-morning.clinician-decides:a clinician decides`,
+          ...offer('go-on'),
+          leadsTo: $localize`:@@clinic.this-morning.with-reason:with a clinician’s reason`,
+          roomId: room.id,
         },
       ],
-      more: [begin(room), ...begins],
+      more: [begin(room), ...begins, again],
       filled: 1,
       isPair: true,
     };
@@ -267,31 +249,3 @@ function roomFor(
   const free = planned?.isFree ? planned : rooms.find(({ isFree }) => isFree);
   return suggested ?? free ?? planned ?? { ...row.room, isFree: false };
 }
-
-const begin = (
-  room: RoomNow,
-  says = $localize`:@@clinic.this-morning.begin:Begin in ${room.name}:room:`,
-): Offer => ({ act: 'begin', says, roomId: room.id });
-
-const callsOf = (row: MorningRow): Offer[] =>
-  row.phones.map(({ phone, name, relationship }, index) => ({
-    act: 'call',
-    says:
-      index === 0
-        ? $localize`:@@clinic.this-morning.call:Call ${phoneWords(phone)}:phone:`
-        : $localize`:@@clinic.this-morning.call-other:${relationship}:relationship:, ${name}:name:: ${phoneWords(phone)}:phone:`,
-    phone,
-  }));
-
-const words: Readonly<Record<Exclude<Act, 'begin' | 'call'>, string>> = {
-  arrive: $localize`:@@clinic.this-morning.arrived:Arrived`,
-  'door-check': $localize`:@@clinic.this-morning.door-check:Door check`,
-  collected: $localize`:@@clinic.this-morning.collected:Collected`,
-  'not-collected': $localize`:@@clinic.this-morning.not-collected:Not collected`,
-  feed: $localize`:@@clinic.this-morning.feed-now:Feed now`,
-  neutralise: $localize`:@@clinic.this-morning.neutralised-now:Neutralised now`,
-  label: $localize`:@@clinic.this-morning.label-scanned:Label scanned`,
-  left: $localize`:@@clinic.this-morning.gone-home:Gone home`,
-};
-
-const offer = (act: Exclude<Act, 'begin' | 'call'>, says = words[act]): Offer => ({ act, says });

@@ -11,9 +11,12 @@ import {
   signal,
 } from '@angular/core';
 
-export type ShortAsk = 'not-collected' | 'neutralise' | 'label';
+export type ShortAsk = 'not-collected' | 'neutralise' | 'label' | 'go-on';
 
-/** One answer in a row: why nothing was collected, with what a specimen was neutralised, or the scanned label. */
+/**
+ * One answer in a row: why nothing was collected, with what a specimen was neutralised, the scanned label, or why a
+ * clinician goes on past the longest fast.
+ */
 @Component({
   selector: 'td-short-form',
   template: `<form class="asks" novalidate (submit)="keep($event)">
@@ -92,6 +95,8 @@ export class ShortForm implements OnInit {
         return $localize`:@@clinic.short.which-reason:Which reason`;
       case 'neutralise':
         return $localize`:@@clinic.short.agent:${this.name()}:name:: neutralised with`;
+      case 'go-on':
+        return $localize`:@@clinic.short.go-on:${this.name()}:name:: why go on although the longest fast has passed?`;
       case 'label':
         return $localize`:@@clinic.short.scan:${this.name()}:name:: scan the label`;
     }
@@ -102,6 +107,8 @@ export class ShortForm implements OnInit {
         return $localize`:@@clinic.short.keep-reason:Keep: not collected`;
       case 'neutralise':
         return $localize`:@@clinic.this-morning.neutralised-now:Neutralised now`;
+      case 'go-on':
+        return $localize`:@@clinic.short.begin:Go on and begin`;
       case 'label':
         return $localize`:@@clinic.short.keep-label:Keep this label`;
     }

@@ -11,6 +11,7 @@ import {
 import { RouterLink } from '@angular/router';
 import type { MorningRow } from '../../../../shared/contracts/this-morning';
 import { isDay } from '../../../../shared/domain/day';
+import { dayOf } from '../../../../shared/domain/zone';
 import { ClinicClock } from '../../../common/session/clinic-clock';
 import { ClinicUser } from '../../../common/session/clinic-user';
 import { ClockPipe, DayPipe, clockIn, longDay } from '../../../common/ui/clinic-times';
@@ -101,6 +102,12 @@ export class ThisMorning {
       whom: suggestion.says.slice(0, cut),
       why: suggestion.says.slice(cut),
     };
+  });
+  /** The day that can be closed from here; null for one that is past. */
+  protected readonly closable = computed(() => {
+    const on = this.sheet()?.on;
+    if (on === undefined || !this.user.has('mornings.close')) return null;
+    return on < dayOf(this.now(), this.zone()) ? null : on;
   });
   protected readonly days = computed(() => {
     const sheet = this.sheet();

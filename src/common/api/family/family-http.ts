@@ -26,7 +26,11 @@ export class FamilyHttp {
       const response = await fetch(ORIGIN + path, {
         ...request,
         // The worker stays out, so that no signal is seen as no signal and nothing personal is kept by it.
-        headers: { 'content-type': 'application/json', 'ngsw-bypass': 'on' },
+        headers: {
+          'content-type': 'application/json',
+          'ngsw-bypass': 'on',
+          'accept-language': document.documentElement.lang,
+        },
         credentials: 'same-origin',
         cache: 'no-store',
         signal: patience.signal,

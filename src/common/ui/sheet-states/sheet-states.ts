@@ -1,5 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { Loaded } from '../loaded';
+import { StateMark } from '../state-mark/state-mark';
 
 /**
  * Loading, failed with retry, and the last answer with a note when it could not be fetched again. The content stands
@@ -7,6 +8,7 @@ import type { Loaded } from '../loaded';
  */
 @Component({
   selector: 'td-sheet-states',
+  imports: [StateMark],
   template: `
     @switch (loaded().state()) {
       @case ('loading') {
@@ -19,7 +21,7 @@ import type { Loaded } from '../loaded';
       }
       @case ('failed') {
         <div class="failed" role="alert">
-          <p>{{ loaded().failure()?.message }}</p>
+          <p><td-state-mark name="ceiling" /> {{ loaded().failure()?.message }}</p>
           <button class="do" type="button" (click)="loaded().again()" i18n="@@ui.states.again">
             Try again
           </button>
@@ -28,8 +30,11 @@ import type { Loaded } from '../loaded';
       @default {
         @if (isStale()) {
           <div class="failed" role="status">
-            <p i18n="@@ui.states.stale">
-              This is the last state we have. The server does not answer; we go on trying.
+            <p>
+              <td-state-mark name="late" />&ngsp;<ng-container i18n="@@ui.states.stale"
+                >This is the last state we have. The server does not answer; we go on
+                trying.</ng-container
+              >
             </p>
             <button class="do" type="button" (click)="loaded().again()" i18n="@@ui.states.now">
               Try now
@@ -53,6 +58,23 @@ import type { Loaded } from '../loaded';
       height: 3.5rem;
       border-radius: var(--round-clinic);
       background: var(--sheet-2);
+      border: var(--rule);
+    }
+    i:nth-child(3) {
+      opacity: 0.7;
+    }
+    i:nth-child(4) {
+      opacity: 0.4;
+    }
+    @media (prefers-reduced-motion: no-preference) {
+      .waiting {
+        animation: breathe 1.6s ease-in-out infinite alternate;
+      }
+    }
+    @keyframes breathe {
+      to {
+        opacity: 0.5;
+      }
     }
     .failed {
       display: flex;
@@ -62,6 +84,7 @@ import type { Loaded } from '../loaded';
       margin-block-end: var(--space-3);
       padding: var(--space-3) var(--space-4);
       border-inline-start: 4px solid var(--care);
+      border-radius: var(--round-clinic);
       background: var(--care-soft);
       color: var(--text);
     }

@@ -1,11 +1,13 @@
-import { ChangeDetectionStrategy, Component, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import { RouterLink } from '@angular/router';
+import { PictureMark } from '../../../common/ui/picture/picture-mark';
 
 /** A link that does not open any more, and what to do instead. */
 @Component({
   selector: 'td-closed-link',
-  imports: [RouterLink],
-  template: `<div class="form">
+  imports: [PictureMark, RouterLink],
+  template: `<div class="form closed">
+    <td-picture class="picture-l" [name]="picture()" />
     @switch (state()) {
       @case ('locked') {
         <p i18n="@@family.arrive.lockedNext">
@@ -37,4 +39,13 @@ import { RouterLink } from '@angular/router';
 })
 export class ClosedLink {
   readonly state = input.required<'expired' | 'used' | 'locked' | 'unknown' | 'open'>();
+  protected readonly picture = computed(() => pictures[this.state()]);
 }
+
+const pictures = {
+  locked: 'lock',
+  used: 'saved',
+  expired: 'late',
+  unknown: 'unsure',
+  open: 'unsure',
+} as const;

@@ -9,11 +9,20 @@ import { PictureMark } from '../../../common/ui/picture/picture-mark';
 import { SkyBand } from '../../../common/ui/sky-band/sky-band';
 import { PageSkeleton } from '../../../common/ui/states/page-skeleton';
 import { PageTrouble } from '../../../common/ui/states/page-trouble';
+import { FollowCalendar } from './follow-calendar';
 
 /** The planned mornings, and a file of neutral entries for the phone's own calendar. */
 @Component({
   selector: 'td-family-calendar',
-  imports: [PageHeading, PageSkeleton, PageTrouble, PictureMark, RouterLink, SkyBand],
+  imports: [
+    FollowCalendar,
+    PageHeading,
+    PageSkeleton,
+    PageTrouble,
+    PictureMark,
+    RouterLink,
+    SkyBand,
+  ],
   templateUrl: './family-calendar.html',
   changeDetection: ChangeDetectionStrategy.OnPush,
 })

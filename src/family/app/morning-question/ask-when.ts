@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
+import { TimeInWords } from '../../../common/ui/night-path/time-in-words';
 import { PageHeading } from '../../../common/ui/page-heading/page-heading';
 import { ChildFace } from '../../../common/ui/picture/child-face';
 import { PictureMark } from '../../../common/ui/picture/picture-mark';
@@ -7,7 +8,7 @@ import type { Question } from './answer-sheet';
 /** When was it finished? Labelled instants with the sky as it was, so that no hour is ambiguous. */
 @Component({
   selector: 'td-ask-when',
-  imports: [ChildFace, PageHeading, PictureMark],
+  imports: [ChildFace, PageHeading, PictureMark, TimeInWords],
   templateUrl: './ask-when.html',
   host: { class: 'ask' },
   changeDetection: ChangeDetectionStrategy.OnPush,
