@@ -42,7 +42,7 @@ test('the morning question and the door are run with the keyboard alone', async 
   const family = await prepareFamily(house, {
     fullName: 'Tavi Lindgren',
     callMe: 'Tavi',
-    phone: '+13125550186',
+    phone: '+13125550158',
   });
   const morning = await planMornings(house, family);
   const link = await toMorningQuestion(house, family, morning);

@@ -3,7 +3,7 @@ import { prepareFamily, planMornings } from './support/prepared-family';
 import { expectNeutral } from './support/stand-ins';
 import { expect, test } from './support/walk';
 
-const phone = '+13125550195';
+const phone = '+13125550159';
 const email = 'mother.of.ayla@example.org';
 /** What a change would make is made and undone on the server, with everything the family would hear. */
 const patient = { timeout: 30_000 };

@@ -5,7 +5,8 @@ import { openThrowawayHouse } from '../../server/bootstrap/house.mjs';
 
 export default async function globalSetup() {
   await buildAll();
-  const house = await openThrowawayHouse();
+  // Visitors of the tests come from addresses of their own, see e2e/support/own-address.
+  const house = await openThrowawayHouse({ environment: { THREEDAWN_TRUSTED_PROXIES: '1' } });
   const { environment, database, origin } = house;
   const app = new URL(environment.THREEDAWN_DATABASE_URL);
   const migrate = new URL(environment.THREEDAWN_DATABASE_MIGRATE_URL);

@@ -1,6 +1,7 @@
 import { expect, request, type APIRequestContext } from '@playwright/test';
 import type { RehearsalState } from '../../../shared/contracts/rehearsal';
 import { addDays, dayOf, instantOf, localPartsOf } from '../../../shared/domain/zone';
+import { ownAddress } from './own-address';
 import { StandIns } from './stand-ins';
 
 export const zone = 'America/Chicago';
@@ -24,7 +25,7 @@ export class House {
     // As a page of ours would: a write without the Origin is refused.
     const requests = await request.newContext({
       baseURL: origin,
-      extraHTTPHeaders: { Origin: origin },
+      extraHTTPHeaders: { Origin: origin, ...ownAddress() },
     });
     const house = new House(origin, requests);
     await house.post('/api/clinic/session', { email: signInOf(who), password });

@@ -9,6 +9,7 @@ import type { ClinicLanguage } from '../../../shared/languages/clinic-languages'
 import { CleanConsole } from './clean-console';
 import { say } from './frame-words';
 import { House, password, signInOf, type Who } from './house';
+import { ownAddress } from './own-address';
 
 export { expect };
 
@@ -50,7 +51,7 @@ export const test = base.extend<Fixtures>({
   people: async ({ browser, clean }, use) => {
     const contexts: BrowserContext[] = [];
     const open = async (options: BrowserContextOptions): Promise<Page> => {
-      const context = await browser.newContext(options);
+      const context = await browser.newContext({ extraHTTPHeaders: ownAddress(), ...options });
       clean.watch(context);
       contexts.push(context);
       return context.newPage();
