@@ -92,8 +92,8 @@ for (const { language, clinic, mother, phone: number, child: names, series } of 
     const phone = new FamilyPhone(await people.phone());
     const main = phone.page.locator('body');
     /** A text that fits a wording of the language: neutral, and in no other language. */
-    const text = async (key: string, after: number): Promise<string> => {
-      const { body } = await standIns.text(number, wordingLike(language, key), after);
+    const text = async (after: number, ...keys: string[]): Promise<string> => {
+      const { body } = await standIns.text(number, wordingLike(language, ...keys), after);
       expectNeutral(body, secrets);
       expectOwnWords(body, language, ownNames);
       return body;
@@ -113,7 +113,7 @@ for (const { language, clinic, mother, phone: number, child: names, series } of 
     await test.step('the invitation opens with a birth date, and shows the night', async () => {
       await rosa.getByRole('button', { name: say(rosa, 'Send the invitation') }).click();
       await expect(rosa.getByText(say(rosa, 'The invitation is on its way.'))).toBeVisible();
-      const link = linkIn(await text('message.invitation.text', 0), 'i');
+      const link = linkIn(await text(0, 'message.invitation.text'), 'i');
       await phone.page.goto(link);
       await expect(phone.page).toHaveURL(new RegExp(`/${language}/i/`));
       await phone.arrive(link, child.bornOn);
@@ -139,11 +139,11 @@ for (const { language, clinic, mother, phone: number, child: names, series } of 
       await test.step(`morning ${index + 1}`, async () => {
         const before = await textsSoFar();
         await house.moveTo(instantOf({ on: addDays(morning.on, -1), time: '19:00', zone }));
-        const evening = await text('message.evening.text', before);
+        const evening = await text(before, 'message.evening.text', 'message.evening.short');
         expect(evening).toContain(child.familyLabel);
         const arrival = instantOf({ on: morning.on, time: morning.arrivalTime, zone });
         await house.moveTo(arrival - 85 * 60_000);
-        await phone.page.goto(linkIn(await text('message.morning.text', before), 'm'));
+        await phone.page.goto(linkIn(await text(before, 'message.morning.text'), 'm'));
         await expectOwnPage(main, language, ownNames);
         await phone.answerNothing(language);
         await expect(phone.heading(wordingLike(language, 'outcome.come.heading'))).toBeVisible();
@@ -166,7 +166,7 @@ for (const { language, clinic, mother, phone: number, child: names, series } of 
     });
 
     await test.step('the family reads the letter with a fresh code', async () => {
-      await phone.page.goto(linkIn(await text('message.letter-waits.text', before), ''));
+      await phone.page.goto(linkIn(await text(before, 'message.letter-waits.text'), ''));
       const code = await phone.typeFreshCode(standIns, number, language);
       expectNeutral(code, secrets);
       expectOwnWords(code, language, ownNames);

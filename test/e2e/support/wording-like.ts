@@ -2,7 +2,11 @@ import type { LanguageId } from '../../../shared/languages/languages';
 import { shippedWords } from '../../support/words';
 
 /** What a shipped text of a language looks like, whatever is filled in. */
-export function wordingLike(language: LanguageId, key: string): RegExp {
+export function wordingLike(language: LanguageId, ...keys: readonly string[]): RegExp {
+  return new RegExp(keys.map((key) => sourceLike(language, key)).join('|'));
+}
+
+function sourceLike(language: LanguageId, key: string): string {
   const text = shippedWords(language)[key];
   if (text === undefined) throw new Error(`There is no ${key} in ${language}.`);
   const fixed: string[] = [''];
@@ -15,5 +19,5 @@ export function wordingLike(language: LanguageId, key: string): RegExp {
   }
   const literal = (part: string): string =>
     part.replace(/[.*+?^${}()|[\]\\]/g, '\\$&').replace(/\s+/g, '\\s+');
-  return new RegExp(fixed.map(literal).join('[^]*?'));
+  return fixed.map(literal).join('[^]*?');
 }
